@@ -65,3 +65,13 @@ func (is Issues) Err() error {
 func (is *Issues) Add(s Severity, feature, path, format string, args ...any) {
 	*is = append(*is, Issue{Feature: feature, Path: path, Severity: s, Text: fmt.Sprintf(format, args...)})
 }
+
+// HasError reports whether any issue is of severity Error.
+func (is Issues) HasError() bool {
+	for _, i := range is {
+		if i.Severity == Error {
+			return true
+		}
+	}
+	return false
+}
