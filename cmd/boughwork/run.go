@@ -70,7 +70,7 @@ func run(ctx context.Context, stdout, stderr io.Writer, args []string) int {
 // command returns the root command with all commands in it.
 func command() *cobra.Command {
 	root := &cobra.Command{
-		Use:   "boughwork",
+		Use:   "boughwork COMMAND",
 		Short: "least-volume layouts for branching roof supports, with a certified bound",
 		Long: `boughwork reads a brief (a site plan, loads, material, settings) and finds the bars that carry the roof with the
 least material, with a bound that no layout on the same ground structure can go below.
@@ -79,13 +79,27 @@ least material, with a bound that no layout on the same ground structure can go 
 		Version:       version + " (" + build() + ")",
 		SilenceErrors: true,
 		SilenceUsage:  true,
-		Args:          cobra.NoArgs,
+		Args:          knownCommand,
 		RunE:          func(c *cobra.Command, _ []string) error { return c.Help() },
 	}
 	root.SetVersionTemplate("boughwork {{.Version}}\n")
+	root.SetHelpTemplate(helpTemplate)
+	root.SuggestionsMinimumDistance = 2
 	root.CompletionOptions.DisableDefaultCmd = true
-	root.AddCommand(newCommand(), growCommand(), verifyCommand(), settingsCommand())
+	root.AddCommand(newCommand(), settingsCommand())
 	return root
+}
+
+// knownCommand refuses a word that is no command, with the commands that are near it.
+func knownCommand(root *cobra.Command, args []string) error {
+	if len(args) == 0 {
+		return nil
+	}
+	hint := "`boughwork help` lists the commands"
+	if near := root.SuggestionsFor(args[0]); len(near) > 0 {
+		hint = fmt.Sprintf("did you mean %q?", near[0])
+	}
+	return fmt.Errorf("there is no command %q; %s", args[0], hint)
 }
 
 // build names the toolchain and the revision that the program was built from, as far as they are known.

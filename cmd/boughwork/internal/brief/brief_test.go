@@ -73,12 +73,12 @@ func TestDefaultsReachTheSpec(t *testing.T) {
 func TestThreeFormats(t *testing.T) {
 	texts := map[string]string{
 		"yaml": "title: Same\nsite: {coordinates: metres, epsg: 25832}\ngrid: {deck_spacing_m: 3}\nfootings: [{zone: A b, vertical_kn: 12, no_uplift: true}]\n" +
-			"loads:\n  actions:\n    - {name: G, kind: permanent, area: [{kn_m2: 1, on: {polygon: [[0, 0], [4, 0], [4, 3]]}}], point: [{at: [1, 2], towards_kn: 3, bearing_deg: 90}]}\n",
+			"loads:\n  actions:\n    - {name: G, kind: permanent, area: [{kn_m2: 1, where: {polygon: [[0, 0], [4, 0], [4, 3]]}}], point: [{at: [1, 2], towards_kn: 3, bearing_deg: 90}]}\n",
 		"toml": "title = 'Same'\n[site]\ncoordinates = 'metres'\nepsg = 25832\n[grid]\ndeck_spacing_m = 3\n[[footings]]\nzone = 'A b'\nvertical_kn = 12\nno_uplift = true\n" +
-			"[[loads.actions]]\nname = 'G'\nkind = 'permanent'\n[[loads.actions.area]]\nkn_m2 = 1\non.polygon = [[0, 0], [4, 0], [4.0, 3.0]]\n[[loads.actions.point]]\nat = [1, 2.0]\ntowards_kn = 3\nbearing_deg = 90\n",
+			"[[loads.actions]]\nname = 'G'\nkind = 'permanent'\n[[loads.actions.area]]\nkn_m2 = 1\nwhere.polygon = [[0, 0], [4, 0], [4.0, 3.0]]\n[[loads.actions.point]]\nat = [1, 2.0]\ntowards_kn = 3\nbearing_deg = 90\n",
 		"json": `{"title": "Same", "site": {"coordinates": "metres", "epsg": 25832}, "grid": {"deck_spacing_m": 3},
 			"footings": [{"zone": "A b", "vertical_kn": 12, "no_uplift": true}],
-			"loads": {"actions": [{"name": "G", "kind": "permanent", "area": [{"kn_m2": 1, "on": {"polygon": [[0,0],[4,0],[4,3],[0,0]]}}],
+			"loads": {"actions": [{"name": "G", "kind": "permanent", "area": [{"kn_m2": 1, "where": {"polygon": [[0,0],[4,0],[4,3],[0,0]]}}],
 			"point": [{"at": [1, 2], "towards_kn": 3, "bearing_deg": 90}]}]}}`,
 	}
 	var first string
@@ -139,9 +139,9 @@ func TestMessages(t *testing.T) {
 		{"suction downwards", load("kn_m2: -1"), "brief: loads.actions[0].area[0].kn_m2: found -1; a negative pressure is suction and needs acts: normal"},
 		{"sideways without bearing", load("kn_m2: 1, acts: towards"), "brief: loads.actions[0].area[0].bearing_deg: missing; give a number from -360 to 360 (degrees)"},
 		{"bearing without sideways", load("kn_m2: 1, bearing_deg: 3"), "brief: loads.actions[0].area[0].bearing_deg: this load has no horizontal direction"},
-		{"half a place", load("kn_m2: 1, on: {half_bearing_deg: 0, through: [1]}"), "brief: loads.actions[0].area[0].on.through: found a list of 1; want two numbers in brackets"},
-		{"a line without a side", load("kn_m2: 1, on: {through: [1, 2]}"), "brief: loads.actions[0].area[0].on.through: says where the roof is parted"},
-		{"two corners", load("kn_m2: 1, on: {polygon: [[1, 2], [3, 4]]}"), "brief: loads.actions[0].area[0].on.polygon: found a list of 2; want three or more places"},
+		{"half a place", load("kn_m2: 1, where: {half_bearing_deg: 0, through: [1]}"), "brief: loads.actions[0].area[0].where.through: found a list of 1; want two numbers in brackets"},
+		{"a line without a side", load("kn_m2: 1, where: {through: [1, 2]}"), "brief: loads.actions[0].area[0].where.through: says where the roof is parted"},
+		{"two corners", load("kn_m2: 1, where: {polygon: [[1, 2], [3, 4]]}"), "brief: loads.actions[0].area[0].where.polygon: found a list of 2; want three or more places"},
 		{"twins", "loads: {actions: [{name: G, kind: snow, area: [{kn_m2: 1}]}, {name: G, kind: snow, area: [{kn_m2: 1}]}]}", `brief: loads.actions[1].name: "G" is given twice`},
 		{"letter case", ok + "Title: a\ntitle: b", "brief: title: given twice, in different letter case; keep one of them"},
 		{"dots", ok + "solve.gap: 0.1", `brief: "solve.gap": a key is a plain word; write sections as nested keys`},
@@ -183,7 +183,7 @@ func TestOverrides(t *testing.T) {
 	t.Setenv("BOUGHWORK_SOLVE_GAP", "1e-4")
 	t.Setenv("BOUGHWORK_SELF_WEIGHT", "false")
 	s := mustParse(t, file, "grid.foot_spacing_m=7", "loads.actions[0].area[0].kn_m2=2", "site.file=a=b.geojson",
-		"loads.actions[0].area[0].on.polygon=[[0,0],[1,0],[1,1]]")
+		"loads.actions[0].area[0].where.polygon=[[0,0],[1,0],[1,1]]")
 	got := []float64{s.spec.DeckSpacing, s.spec.InnerRise, s.spec.FootSpacing, s.spec.WallSpacing, s.Solve.Gap, s.spec.Actions[0].Area[0].Pressure}
 	want := []float64{5, 6, 7, 2, 1e-4, 2000}
 	for i := range want {

@@ -48,7 +48,7 @@ func readArea(in section) ground.AreaLoad {
 	l := ground.AreaLoad{
 		Pressure:  in.needed("kn_m2") * 1e3,
 		Direction: ground.Direction(max(0, in.choice("acts"))),
-		Pattern:   readPattern(in.sub("on")),
+		Pattern:   readPattern(in.sub("where")),
 	}
 	l.Bearing = readBearing(in, l.Direction == ground.Towards)
 	if l.Pressure < 0 && l.Direction != ground.Normal {
@@ -58,7 +58,7 @@ func readArea(in section) ground.AreaLoad {
 }
 
 func readEdge(in section) ground.EdgeLoad {
-	l := ground.EdgeLoad{Force: in.needed("kn_m") * 1e3, Direction: ground.Down, Pattern: readPattern(in.sub("on"))}
+	l := ground.EdgeLoad{Force: in.needed("kn_m") * 1e3, Direction: ground.Down, Pattern: readPattern(in.sub("where"))}
 	if in.choice("acts") == 1 {
 		l.Direction = ground.Towards
 		l.Windward = in.on("windward_only")

@@ -19,10 +19,10 @@ func (s *Study) Spec(frame geom.Frame) (ground.Spec, geom.Issues) {
 		path := fmt.Sprintf("loads.actions[%d]", i)
 		a.Area, a.Edge, a.Point = slices.Clone(a.Area), slices.Clone(a.Edge), slices.Clone(a.Point)
 		for j := range a.Area {
-			a.Area[j].Pattern = c.pattern(a.Area[j].Pattern, fmt.Sprintf("%s.area[%d].on", path, j))
+			a.Area[j].Pattern = c.pattern(a.Area[j].Pattern, fmt.Sprintf("%s.area[%d].where", path, j))
 		}
 		for j := range a.Edge {
-			a.Edge[j].Pattern = c.pattern(a.Edge[j].Pattern, fmt.Sprintf("%s.edge[%d].on", path, j))
+			a.Edge[j].Pattern = c.pattern(a.Edge[j].Pattern, fmt.Sprintf("%s.edge[%d].where", path, j))
 		}
 		for j := range a.Point {
 			a.Point[j].At = c.place(a.Point[j].At, fmt.Sprintf("%s.point[%d].at", path, j))
