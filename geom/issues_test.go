@@ -55,6 +55,7 @@ func TestIssues(t *testing.T) {
 		{"hole around", collection(roofWith(`[[[10,5],[20,5],[20,10],[10,5]],`+square+`]`), metricFoot), m, want{Error, "features[0].geometry.coordinates[1]", "not inside"}},
 		{"hole in hole", collection(roofWith(`[`+square+`,[[5,5],[15,5],[15,15],[5,15],[5,5]],[[8,8],[10,8],[10,10],[8,8]]]`), metricFoot), m, want{Error, "features[0].geometry.coordinates[2]", "overlaps the hole"}},
 		{"hole is outer", collection(roofWith(`[`+square+`,`+square+`]`), metricFoot), m, want{Error, "features[0].geometry.coordinates[1][0]", "holes inside"}},
+		{"nothing usable", collection(roofWith(`[[[0,0],[40]]]`), feat(`"role":"footing"`, "Point", `[20]`)), m, want{Error, "features[1].geometry.coordinates", "two numbers"}},
 		{"no rings", collection(roofWith(`[]`), metricFoot), m, want{Error, "features[0].geometry.coordinates", "empty list"}},
 		{"height", collection(roofWith(`[[[0,0,9001],[40,0],[40,20],[0,0,9001]]]`), metricFoot), m, want{Error, "features[0].geometry.coordinates[0][0]", "height"}},
 		{"elevation", collection(feat(`"role":"roof","elevation_m":"6"`, "Polygon", "["+square+"]"), metricFoot), m, want{Error, "features[0].properties.elevation_m", "quotes"}},

@@ -86,6 +86,9 @@ func (rd *siteReader) reach() {
 	if middle == nil {
 		middle, of = rd.middle(roles...), "the plan"
 	}
+	if middle == nil {
+		return // nothing is left to judge
+	}
 	for _, f := range rd.features {
 		worst := 0.0
 		f.shapes(func(l rawLine) {
