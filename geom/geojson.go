@@ -54,6 +54,8 @@ type siteReader struct {
 	issues   Issues
 	features []*feature
 	site     Site
+	// Paths of the roofs, footings and walls of the site, in the same order.
+	roofAt, footAt, wallAt []string
 }
 
 // document reads the whole file.

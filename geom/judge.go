@@ -64,10 +64,10 @@ func (z Zone) places() (out []Vec) {
 // judge checks what concerns several features.
 func (rd *siteReader) judge() {
 	if rd.count(roleRoof) == 0 {
-		rd.issues.Add(Error, "", "", "the site has no roof; give one Polygon or MultiPolygon the property \"role\": \"roof\"")
+		rd.issues.Add(Error, "", "features", "the site has no roof; give one Polygon or MultiPolygon the property \"role\": \"roof\"")
 	}
 	if rd.count(roleFooting, roleWall) == 0 {
-		rd.issues.Add(Error, "", "", "the site has no place to stand; give an area, a line or a point the property \"role\": \"footing\", or a line \"role\": \"wall\"")
+		rd.issues.Add(Error, "", "features", "the site has no place to stand; give an area, a line or a point the property \"role\": \"footing\", or a line \"role\": \"wall\"")
 	}
 	rd.roofAreas()
 	rd.roofOverlaps()
@@ -148,7 +148,7 @@ func (rd *siteReader) middle(roles ...string) *orb.Point {
 
 // roofAreas reports roofs of no area.
 func (rd *siteReader) roofAreas() {
-	for _, r := range rd.site.Roofs {
+	for i, r := range rd.site.Roofs {
 		area := 0.0
 		for _, g := range r.Regions {
 			area += Area(g.Polygon())
@@ -160,26 +160,26 @@ func (rd *siteReader) roofAreas() {
 		if rd.opt.Metric {
 			remedy = "if positions are longitude and latitude, set `coordinates: lonlat` in the brief's site"
 		}
-		rd.issues.Add(Error, r.Name, "", "the roof has an area of %.2g m2, which is nothing to carry; %s", area, remedy)
+		rd.issues.Add(Error, r.Name, rd.roofAt[i], "the roof has an area of %.2g m2, which is nothing to carry; %s", area, remedy)
 	}
 }
 
 // roofOverlaps warns of roof polygons that cover the same place: its load would count twice.
 func (rd *siteReader) roofOverlaps() {
 	type patch struct {
-		name string
-		plan orb.Polygon
+		name, path string
+		plan       orb.Polygon
 	}
 	var all []patch
-	for _, r := range rd.site.Roofs {
+	for i, r := range rd.site.Roofs {
 		for _, g := range r.Regions {
-			all = append(all, patch{r.Name, g.Polygon()})
+			all = append(all, patch{r.Name, rd.roofAt[i], g.Polygon()})
 		}
 	}
 	for i, p := range all {
 		for _, q := range all[:i] {
 			if overlapping(p.plan, q.plan, overlapDepth) {
-				rd.issues.Add(Warning, p.name, "", "the roof overlaps %s, and loads count twice there; trim one of them", q.name)
+				rd.issues.Add(Warning, p.name, p.path, "the roof overlaps %s, and loads count twice there; trim one of them", q.name)
 			}
 		}
 	}
@@ -188,9 +188,9 @@ func (rd *siteReader) roofOverlaps() {
 // footingNames warns of zones that cannot be told apart.
 func (rd *siteReader) footingNames() {
 	seen := map[string]bool{}
-	for _, z := range rd.site.Footings {
+	for i, z := range rd.site.Footings {
 		if seen[z.Name] {
-			rd.issues.Add(Warning, z.Name, "", "another footing has the same name; limits given by name in the brief hold for both, each for itself")
+			rd.issues.Add(Warning, z.Name, rd.footAt[i], "another footing has the same name; limits given by name in the brief hold for both, each for itself")
 		}
 		seen[z.Name] = true
 	}

@@ -10,7 +10,7 @@ import (
 // below a foot that is under it. A foot outside the plan may be higher than the roof, as on a slope.
 func (rd *siteReader) roofAboveGround() {
 	ground := rd.ground()
-	for _, r := range rd.site.Roofs {
+	for i, r := range rd.site.Roofs {
 		var rings [][]Vec
 		for _, g := range r.Regions {
 			rings = append(rings, g.Rings...)
@@ -20,7 +20,7 @@ func (rd *siteReader) roofAboveGround() {
 			if h.lo == 0 && h.hi == 0 {
 				remedy = "give it heights: a third number in each position, elevation_m, or a roof surface in the brief"
 			}
-			rd.issues.Add(Error, r.Name, "", "the roof is below ground: its lowest place is at %.3g m and the lowest foot at %.3g m; %s", h.lo, ground.lo, remedy)
+			rd.issues.Add(Error, r.Name, rd.roofAt[i], "the roof is below ground: its lowest place is at %.3g m and the lowest foot at %.3g m; %s", h.lo, ground.lo, remedy)
 			continue
 		}
 		rd.feetUnder(r)
@@ -29,20 +29,20 @@ func (rd *siteReader) roofAboveGround() {
 
 // feetUnder reports the first foot of each zone and wall that is under a roof and not below it.
 func (rd *siteReader) feetUnder(r Roof) {
-	check := func(name string, places []Vec) {
+	check := func(name, path string, places []Vec) {
 		for _, v := range places {
 			if z := r.Surface.Height(v.X, v.Y); z <= v.Z && r.covers(v) {
-				rd.issues.Add(Error, name, "", "the roof %s is at %.3g m above the foot at %s, which is at %.3g m; raise the roof or lower the foot",
+				rd.issues.Add(Error, name, path, "the roof %s is at %.3g m above the foot at %s, which is at %.3g m; raise the roof or lower the foot",
 					r.Name, z, rd.inWords(orb.Point{v.X, v.Y}), v.Z)
 				return
 			}
 		}
 	}
-	for _, z := range rd.site.Footings {
-		check(z.Name, z.places())
+	for i, z := range rd.site.Footings {
+		check(z.Name, rd.footAt[i], z.places())
 	}
-	for _, w := range rd.site.Walls {
-		check(w.Name, w.Points)
+	for i, w := range rd.site.Walls {
+		check(w.Name, rd.wallAt[i], w.Points)
 	}
 }
 
@@ -58,18 +58,18 @@ func (r Roof) covers(v Vec) bool {
 
 // footings warns of footings that can hardly be meant.
 func (rd *siteReader) footings() {
-	for _, z := range rd.site.Footings {
-		rd.underNothing(z)
+	for i, z := range rd.site.Footings {
+		rd.underNothing(z, rd.footAt[i])
 		for _, k := range rd.site.KeepClear {
 			if swallows(k, z) {
-				rd.issues.Add(Warning, z.Name, "", "the keep-clear %s covers all of this footing, so that no bar can leave it; move one of them, or let the keep-clear begin higher", k.Name)
+				rd.issues.Add(Warning, z.Name, rd.footAt[i], "the keep-clear %s covers all of this footing, so that no bar can leave it; move one of them, or let the keep-clear begin higher", k.Name)
 			}
 		}
 	}
 }
 
 // underNothing warns of a zone that is farther outside the plan of every roof than the roof is high.
-func (rd *siteReader) underNothing(z Zone) {
+func (rd *siteReader) underNothing(z Zone, path string) {
 	low := heights(z.places()).lo
 	best, rise := math.Inf(1), 0.0
 	for _, r := range rd.site.Roofs {
@@ -83,7 +83,7 @@ func (rd *siteReader) underNothing(z Zone) {
 			}
 		}
 	}
-	rd.issues.Add(Warning, z.Name, "", "the footing is under nothing: it is %.1f m outside the nearest roof, which is %.1f m above it; check its place", best, rise)
+	rd.issues.Add(Warning, z.Name, path, "the footing is under nothing: it is %.1f m outside the nearest roof, which is %.1f m above it; check its place", best, rise)
 }
 
 // shapes returns the plan of a zone as polygons with closed rings, lines and points among them.

@@ -217,3 +217,35 @@ func TestOverlapping(t *testing.T) {
 		}
 	}
 }
+
+// Rings through random places cross themselves or not; every pair of edges tested one by one must agree.
+func TestClashesAgainstAllPairs(t *testing.T) {
+	rnd := rand.New(rand.NewPCG(19, 20))
+	left := func(a, b, c orb.Point) bool { return cross(diff(b, a), diff(c, a)) > 0 }
+	simple := 0
+	for range 4000 {
+		ring := make([]orb.Point, 4+rnd.IntN(5))
+		n := len(ring)
+		for i := range ring {
+			ring[i] = orb.Point{155000 + 40*rnd.Float64(), 463000 + 40*rnd.Float64()}
+		}
+		crossings := 0
+		for i := range n {
+			for j := i + 2; j < n; j++ {
+				a, b, c, d := ring[i], ring[i+1], ring[j], ring[(j+1)%n]
+				if (i > 0 || j < n-1) && left(a, b, c) != left(a, b, d) && left(c, d, a) != left(c, d, b) {
+					crossings++
+				}
+			}
+		}
+		if got := clashes([][]orb.Point{ring}); (len(got) > 0) != (crossings > 0) {
+			t.Fatalf("%v: %d crossings, clashes %v", ring, crossings, got)
+		}
+		if crossings == 0 {
+			simple++
+		}
+	}
+	if simple < 200 || simple > 3800 {
+		t.Errorf("only one kind of ring is tested: %d of 4000 are simple", simple)
+	}
+}

@@ -8,7 +8,7 @@ import (
 )
 
 // maxPositions bounds the positions of one polygon: enough for any outline, and few enough to compare them in pairs.
-const maxPositions = 20000
+const maxPositions = 5000
 
 // planRing is a ring in local metres without its closing position and without repeated ones.
 type planRing struct {
@@ -41,17 +41,19 @@ func (rd *siteReader) regions(f *feature) (out []Region) {
 
 // region checks one polygon and orients its rings.
 func (rd *siteReader) region(f *feature, p rawPolygon) (Region, bool) {
-	var rings []planRing
 	count := 0
 	for _, raw := range p.rings {
 		count += len(raw.pos)
-		if r, ok := rd.ring(f, raw); ok {
-			rings = append(rings, r)
-		}
 	}
 	if count > maxPositions {
 		rd.fault(f, p.rings[0].path, "the polygon has %d positions, more than %d; simplify it", count, maxPositions)
 		return Region{}, false
+	}
+	var rings []planRing
+	for _, raw := range p.rings {
+		if r, ok := rd.ring(f, raw); ok {
+			rings = append(rings, r)
+		}
 	}
 	if len(rings) < len(p.rings) || len(rings) == 0 || !rd.simple(f, rings) || !rd.nested(f, rings) {
 		return Region{}, false
