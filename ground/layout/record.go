@@ -114,6 +114,14 @@ type RecordCandidates struct {
 	RoofFactor   float64       `json:"roof_bar_factor"`
 	KeepClear    []RecordPrism `json:"keep_clear"`
 	Envelope     []RecordPrism `json:"envelope"` // null: no envelope
+	// Kept members are in the program whatever their length, at the given area and no cost.
+	Kept []RecordKept `json:"kept,omitempty"`
+}
+
+// RecordKept is a member that stands already or is insisted on.
+type RecordKept struct {
+	Nodes  [2]int  `json:"nodes"`
+	AreaM2 float64 `json:"area_m2"`
 }
 
 // RecordPrism is a vertical prism; rings are closed, local metres.

@@ -23,6 +23,7 @@ type Progress struct {
 	Round         int
 	Cases, AllOf  int // cases in the program so far, of all
 	Bars          int // bars in the program now
+	Iterations    int // of the solver, all rounds so far
 	Volume, Bound float64
 	Gap           float64
 }

@@ -127,7 +127,7 @@ func (s *Symbolic) finish() {
 // this share of the joined front. Wider fronts run faster than the zeros cost.
 const (
 	relaxedEntries = 4000
-	relaxedShare   = 0.08
+	relaxedShare   = 0.25
 )
 
 // amalgamate groups positions into supernodes: first the fundamental ones, then relaxed ones.

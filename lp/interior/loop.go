@@ -1,0 +1,182 @@
+package interior
+
+import (
+	"context"
+	"math"
+
+	"boughwork/lp"
+)
+
+// A step goes at most this share of the way to the nearest bound, more when the point is nearly there.
+const (
+	stepShare   = 0.9
+	stepTightly = 0.9995
+)
+
+// outcome of the loop.
+type outcome struct {
+	status     lp.Status
+	iterations int
+}
+
+// run follows the central path from x until the gap and the residuals are below the settings (Mehrotra 1992:
+// predictor, centring parameter from it, corrector; primal and dual steps of their own).
+func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Settings, done int) (outcome, error) {
+	s := sys.s
+	w := &weights{invD: make([]float64, s.bars*s.cases), t: make([]float64, s.bars*s.cases), invS: make([]float64, s.bars)}
+	d := newIterate(s, sys.size)
+	g := target{cp: make([]float64, s.bars*s.cases), cm: make([]float64, s.bars*s.cases), cz: make([]float64, s.bars)}
+	stuck := 0
+	for it := done; ; it++ {
+		r := sys.residuals(x)
+		sum, count := s.complementarity(x)
+		mu := sum / float64(count)
+		primal, dual := sys.values(x)
+		if set.Progress != nil {
+			set.Progress(lp.Iteration{Number: it, Objective: primal * s.force * s.lambda, Bound: dual * s.force * s.lambda, Residual: largest(r.force)})
+		}
+		switch {
+		case sys.converged(r, primal, dual, gap, set):
+			return outcome{lp.Optimal, it}, nil
+		case it >= set.Iterations:
+			return outcome{lp.IterationLimit, it}, nil
+		case stuck >= 4 || math.IsNaN(primal+dual):
+			return outcome{lp.Trouble, it}, nil
+		}
+		s.weigh(x, w)
+		if err := sys.assemble(ctx, w); err != nil {
+			return outcome{lp.Cancelled, it}, err
+		}
+		s.aim(x, nil, 0, g)
+		sys.direction(x, w, r, g, d)
+		ap, ad := s.longest(x, d)
+		after := s.complementarityAfter(x, d, ap, ad) / float64(count)
+		centre := math.Pow(after/mu, 3)
+		floor := 0.1 * gap * math.Max(math.Abs(primal), 1e-12) / float64(count)
+		s.aim(x, d, math.Max(centre*mu, floor), g)
+		sys.direction(x, w, r, g, d)
+		ap, ad = s.longest(x, d)
+		share := math.Max(stepShare, 1-math.Min(1, mu/math.Max(math.Abs(primal), 1e-300)*float64(count)))
+		share = math.Min(share, stepTightly)
+		ap, ad = math.Min(1, share*ap), math.Min(1, share*ad)
+		x.step(s, d, ap, ad)
+		if math.Max(ap, ad) < 1e-3 {
+			stuck++
+		} else {
+			stuck = 0
+		}
+	}
+}
+
+// converged reports whether the point is good enough: gap, balance of forces, and prices within a share of the gap.
+func (sys *system) converged(r residuals, primal, dual, gap float64, set lp.Settings) bool {
+	s := sys.s
+	scale := math.Max(math.Abs(primal), 1e-9)
+	absolute := gap / set.Gap * set.Absolute / (s.force * s.lambda)
+	if !(math.Abs(primal-dual) <= math.Max(gap*scale, absolute)) || largest(r.force) > 1e2*set.Residual {
+		return false
+	}
+	for i, rc := range r.price {
+		if !s.fixed[i] && math.Abs(rc) > gap*s.cost[i] {
+			return false
+		}
+	}
+	for i := range s.bars {
+		for j := i * s.cases; j < (i+1)*s.cases; j++ {
+			if math.Abs(r.compat[j]) > gap*s.cost[i] && !s.fixed[i] {
+				return false
+			}
+		}
+	}
+	return true
+}
+
+// aim sets the target of the complementarity conditions: mu, less the present products, less the products of the
+// predictor's changes (nil for the predictor itself).
+func (s *scaled) aim(x, d *iterate, mu float64, g target) {
+	for i := range s.bars {
+		for j := i * s.cases; j < (i+1)*s.cases; j++ {
+			g.cp[j], g.cm[j] = mu-x.p[j]*x.yp[j], mu-x.m[j]*x.ym[j]
+			if d != nil {
+				g.cp[j] -= d.p[j] * d.yp[j]
+				g.cm[j] -= d.m[j] * d.ym[j]
+			}
+		}
+		g.cz[i] = mu - x.z[i]*x.pi[i]
+		if d != nil {
+			g.cz[i] -= d.z[i] * d.pi[i]
+		}
+	}
+}
+
+// longest returns the largest primal and dual steps that keep everything positive.
+func (s *scaled) longest(x, d *iterate) (primal, dual float64) {
+	primal, dual = 1e30, 1e30
+	cut := func(v, dv float64, limit *float64) {
+		if dv < 0 && -v/dv < *limit {
+			*limit = -v / dv
+		}
+	}
+	for i := range s.bars {
+		if s.hasZ[i] {
+			cut(x.z[i], d.z[i], &primal)
+			cut(x.pi[i], d.pi[i], &dual)
+		}
+		for j := i * s.cases; j < (i+1)*s.cases; j++ {
+			if s.hasP[i] {
+				cut(x.p[j], d.p[j], &primal)
+				cut(x.yp[j], d.yp[j], &dual)
+			}
+			if s.hasM[i] {
+				cut(x.m[j], d.m[j], &primal)
+				cut(x.ym[j], d.ym[j], &dual)
+			}
+		}
+	}
+	return primal, dual
+}
+
+// complementarityAfter returns the sum of products after steps of at most 1.
+func (s *scaled) complementarityAfter(x, d *iterate, ap, ad float64) float64 {
+	ap, ad = math.Min(1, ap), math.Min(1, ad)
+	sum := 0.0
+	for i := range s.bars {
+		for j := i * s.cases; j < (i+1)*s.cases; j++ {
+			if s.hasP[i] {
+				sum += (x.p[j] + ap*d.p[j]) * (x.yp[j] + ad*d.yp[j])
+			}
+			if s.hasM[i] {
+				sum += (x.m[j] + ap*d.m[j]) * (x.ym[j] + ad*d.ym[j])
+			}
+		}
+		if s.hasZ[i] {
+			sum += (x.z[i] + ap*d.z[i]) * (x.pi[i] + ad*d.pi[i])
+		}
+	}
+	return math.Max(sum, 0)
+}
+
+// step moves the point.
+func (x *iterate) step(s *scaled, d *iterate, ap, ad float64) {
+	for i := range s.bars {
+		x.a[i] += ap * d.a[i]
+		if s.hasZ[i] {
+			x.z[i] += ap * d.z[i]
+			x.pi[i] += ad * d.pi[i]
+		}
+		for j := i * s.cases; j < (i+1)*s.cases; j++ {
+			x.q[j] += ap * d.q[j]
+			if s.hasP[i] {
+				x.p[j] += ap * d.p[j]
+				x.yp[j] += ad * d.yp[j]
+			}
+			if s.hasM[i] {
+				x.m[j] += ap * d.m[j]
+				x.ym[j] += ad * d.ym[j]
+			}
+		}
+	}
+	for j := range x.u {
+		x.u[j] += ad * d.u[j]
+	}
+}

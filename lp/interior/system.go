@@ -1,0 +1,256 @@
+package interior
+
+import (
+	"context"
+	"math"
+
+	"boughwork/lp"
+	"boughwork/lp/sparse"
+)
+
+// system is the reduced normal equations of the layout program: one symmetric positive definite matrix in the
+// displacements of all cases,
+//
+//	M_kk' = delta_kk' sum_i b_i b_i' / D_ik + sum_i v_ik v_ik'' / S_i,   v_ik = t_ik b_i - g_k h_i,
+//
+// with weights from the iterate (weights.go). Vectors over it hold, block after block of the problem, the rows of case
+// 0, of case 1 and so on.
+type system struct {
+	s      *scaled
+	graph  *sparse.Graph
+	mat    *sparse.Matrix
+	factor *sparse.Factor
+	size   int     // rows x cases
+	base   []int32 // place of every row in case 0
+	stride []int32 // from one case to the next
+	local  []int32 // row within its block
+	block  []int32 // block of every row
+	// Bars touch few blocks: bar i has parts partPtr[i] to partPtr[i+1]-1, each the run of entries of one block, and the
+	// edges between its parts, in the order (1,0), (2,0), (2,1), ...
+	partPtr []int32
+	part    []part
+	edgePtr []int32
+	edge    []int32
+	entries []int32 // entries of a bar, grouped by block
+	work    []float64
+}
+
+// part is a run of entries of a bar in one block.
+type part struct {
+	block      int32
+	first, end int32 // into entries
+}
+
+func newSystem(s *scaled, p *lp.Problem) (*system, error) {
+	sys := &system{s: s, size: s.rows * s.cases}
+	sys.layOut(p)
+	sys.connect()
+	sym, err := sparse.Analyse(sys.graph)
+	if err != nil {
+		return nil, err
+	}
+	sys.mat = sparse.NewMatrix(sys.graph)
+	sys.factor = sparse.NewFactor(sym)
+	sys.work = make([]float64, 0, 64)
+	return sys, nil
+}
+
+// layOut places the rows of all cases, block by block.
+func (sys *system) layOut(p *lp.Problem) {
+	k := int32(sys.s.cases)
+	blocks := len(p.Block) - 1
+	sys.graph = &sparse.Graph{Size: make([]int, blocks), At: p.At}
+	sys.base, sys.stride = make([]int32, p.Rows), make([]int32, p.Rows)
+	sys.local, sys.block = make([]int32, p.Rows), make([]int32, p.Rows)
+	for v := range blocks {
+		dim := p.Block[v+1] - p.Block[v]
+		sys.graph.Size[v] = int(dim * k)
+		for r := p.Block[v]; r < p.Block[v+1]; r++ {
+			sys.base[r] = p.Block[v]*k + r - p.Block[v]
+			sys.stride[r], sys.local[r], sys.block[r] = dim, r-p.Block[v], int32(v)
+		}
+	}
+}
+
+// connect finds the parts of every bar and the pairs of blocks that it couples.
+func (sys *system) connect() {
+	s := sys.s
+	number := map[[2]int32]int32{}
+	sys.partPtr, sys.edgePtr = make([]int32, s.bars+1), make([]int32, s.bars+1)
+	for i := range s.bars {
+		begin := len(sys.part)
+		for j := s.ptr[i]; j < s.ptr[i+1]; j++ {
+			v := sys.block[s.row[j]]
+			if seen := sys.hasPart(begin, v); seen {
+				continue
+			}
+			pt := part{block: v, first: int32(len(sys.entries))}
+			for q := j; q < s.ptr[i+1]; q++ {
+				if sys.block[s.row[q]] == v {
+					sys.entries = append(sys.entries, q)
+				}
+			}
+			pt.end = int32(len(sys.entries))
+			sys.part = append(sys.part, pt)
+		}
+		sys.partPtr[i+1] = int32(len(sys.part))
+		for x := begin; x < len(sys.part); x++ {
+			for y := begin; y < x; y++ {
+				key := [2]int32{max(sys.part[x].block, sys.part[y].block), min(sys.part[x].block, sys.part[y].block)}
+				e, ok := number[key]
+				if !ok {
+					e = int32(len(sys.graph.Edge))
+					number[key] = e
+					sys.graph.Edge = append(sys.graph.Edge, key)
+				}
+				sys.edge = append(sys.edge, e)
+			}
+		}
+		sys.edgePtr[i+1] = int32(len(sys.edge))
+	}
+}
+
+func (sys *system) hasPart(begin int, v int32) bool {
+	for _, pt := range sys.part[begin:] {
+		if pt.block == v {
+			return true
+		}
+	}
+	return false
+}
+
+// dot returns b_i . x for case k, times returns h_i . x.
+func (sys *system) dot(i, k int, x []float64) float64 {
+	sum := 0.0
+	for j := sys.s.ptr[i]; j < sys.s.ptr[i+1]; j++ {
+		r := sys.s.row[j]
+		sum += sys.s.b[j] * x[sys.base[r]+int32(k)*sys.stride[r]]
+	}
+	return sum
+}
+
+func (sys *system) lift(i, k int, x []float64) float64 {
+	sum := 0.0
+	for j := sys.s.ptr[i]; j < sys.s.ptr[i+1]; j++ {
+		r := sys.s.row[j]
+		sum += sys.s.h[j] * x[sys.base[r]+int32(k)*sys.stride[r]]
+	}
+	return sum
+}
+
+// add adds beta b_i + eta h_i to x in case k.
+func (sys *system) add(i, k int, beta, eta float64, x []float64) {
+	for j := sys.s.ptr[i]; j < sys.s.ptr[i+1]; j++ {
+		r := sys.s.row[j]
+		x[sys.base[r]+int32(k)*sys.stride[r]] += beta*sys.s.b[j] + eta*sys.s.h[j]
+	}
+}
+
+// weights are the coefficients of one bar in the matrix: invD[k] = 1/D_ik, t[k], and invS = 1/S_i (0 for a fixed bar).
+type weights struct {
+	invD, t []float64 // [bar * cases + case]
+	invS    []float64 // [bar]
+}
+
+// A diagonal entry is raised by this share of the largest in its block, so that a row that no bar holds now keeps a
+// pivot; larger values were seen to spoil the last digits of the equilibrium.
+// A block that no bar touches gets emptyShare of the largest entry of all instead.
+const (
+	diagonalShare = 1e-15
+	emptyShare    = 1e-6
+)
+
+// assemble fills and factorises the matrix.
+func (sys *system) assemble(ctx context.Context, w *weights) error {
+	sys.mat.Clear()
+	for i := range sys.s.bars {
+		sys.addBar(i, w)
+	}
+	top := make([]float64, len(sys.mat.Diag))
+	all := 0.0
+	for v, d := range sys.mat.Diag {
+		n := sys.graph.Size[v]
+		for x := range n {
+			top[v] = math.Max(top[v], d[x*n+x])
+		}
+		all = math.Max(all, top[v])
+	}
+	for v, d := range sys.mat.Diag {
+		n := sys.graph.Size[v]
+		raise := diagonalShare * math.Max(top[v], emptyShare*all)
+		for x := range n {
+			d[x*n+x] += raise
+		}
+	}
+	return sys.factor.Factorise(ctx, sys.mat)
+}
+
+// addBar adds the contribution of bar i to the blocks that it touches.
+func (sys *system) addBar(i int, w *weights) {
+	parts := sys.part[sys.partPtr[i]:sys.partPtr[i+1]]
+	e := sys.edgePtr[i]
+	for x, px := range parts {
+		sys.addPair(i, px, px, sys.mat.Diag[px.block], true, w)
+		for _, py := range parts[:x] {
+			rows, cols := px, py
+			if px.block < py.block {
+				rows, cols = py, px
+			}
+			sys.addPair(i, rows, cols, sys.mat.Off[sys.edge[e]], false, w)
+			e++
+		}
+	}
+}
+
+// addPair adds the contribution of bar i to the block with the rows of part x and the columns of part y.
+func (sys *system) addPair(i int, x, y part, dst []float64, lower bool, w *weights) {
+	s, k := sys.s, sys.s.cases
+	ld := sys.graph.Size[y.block]
+	invS := w.invS[i]
+	for _, jx := range sys.entries[x.first:x.end] {
+		rx := s.row[jx]
+		for cx := range k {
+			at := int(sys.local[rx]+int32(cx)*sys.stride[rx]) * ld
+			vx := w.t[i*k+cx]*s.b[jx] - s.gravity[cx]*s.h[jx]
+			for _, jy := range sys.entries[y.first:y.end] {
+				ry := s.row[jy]
+				col := at + int(sys.local[ry])
+				step := int(sys.stride[ry])
+				last := k
+				if lower {
+					last = cx + 1
+				}
+				if invS != 0 {
+					f := vx * invS
+					for cy := range last {
+						dst[col+cy*step] += f * (w.t[i*k+cy]*s.b[jy] - s.gravity[cy]*s.h[jy])
+					}
+				}
+				dst[col+cx*step] += w.invD[i*k+cx] * s.b[jx] * s.b[jy]
+			}
+		}
+	}
+}
+
+// multiply returns M x, bar by bar, without the matrix: it knows nothing of the rounding that assembly did.
+func (sys *system) multiply(w *weights, x []float64) []float64 {
+	s, k := sys.s, sys.s.cases
+	y := make([]float64, sys.size)
+	for i := range s.bars {
+		sum := 0.0
+		for c := range k {
+			bx := sys.dot(i, c, x)
+			sys.add(i, c, w.invD[i*k+c]*bx, 0, y)
+			sum += w.t[i*k+c] * bx
+			if s.weighs && s.gravity[c] != 0 {
+				sum -= s.gravity[c] * sys.lift(i, c, x)
+			}
+		}
+		if sum *= w.invS[i]; sum != 0 {
+			for c := range k {
+				sys.add(i, c, sum*w.t[i*k+c], -sum*s.gravity[c], y)
+			}
+		}
+	}
+	return y
+}
