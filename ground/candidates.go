@@ -17,13 +17,15 @@ const ThroughNode = 1e-3
 type Candidates struct {
 	s         *Structure
 	obstacles *geom.Obstacles
+	envelope  *geom.Envelope
 	near      *nodeGrid
 	held      []bool // wholly fixed nodes
 }
 
 // NewCandidates prepares the tests of a structure.
 func NewCandidates(s *Structure) *Candidates {
-	c := &Candidates{s: s, obstacles: geom.NewObstacles(s.Rules.KeepClear), near: newNodeGrid(s.Nodes), held: make([]bool, len(s.Nodes))}
+	c := &Candidates{s: s, obstacles: geom.NewObstacles(s.Rules.KeepClear),
+		envelope: geom.NewEnvelope(s.Rules.Envelope), near: newNodeGrid(s.Nodes), held: make([]bool, len(s.Nodes))}
 	for i, n := range s.Nodes {
 		c.held[i] = n.Fixed == [3]bool{true, true, true}
 	}
@@ -56,7 +58,7 @@ func (c *Candidates) Clear(i, j int) bool {
 	if c.near.through(int32(i), int32(j), a, b) || c.obstacles.Blocked(a, b) {
 		return false
 	}
-	return len(c.s.Rules.Envelope) == 0 || geom.InsideEnvelope(c.s.Rules.Envelope, a, b)
+	return c.envelope.Contains(a, b)
 }
 
 // Factor returns the cost factor w of the pair.

@@ -145,14 +145,16 @@ type RecordCertificate struct {
 	Displacement   [][][3]float64 `json:"displacement"` // [case][node][x y z], m3/kN
 }
 
-// RecordCollapse is a motion that the loads drive and that no candidate bar resists.
+// RecordCollapse is a motion that the loads of a case drive and that no candidate bar resists.
 type RecordCollapse struct {
-	Cases []string `json:"cases"` // the cases whose loads drive the motion
+	Case string `json:"case"` // whose loads drive the motion
 	// Nodes are the loaded nodes that the motion moves along their load, the most work first.
 	Nodes []int `json:"nodes"`
-	// Motion is [node][x y z], scaled so that the largest component is 1, of the case that does the most work.
+	// Motion is [node][x y z], scaled so that the largest component is 1 m.
 	Motion [][3]float64 `json:"motion"`
-	// LeastVolumeM3 is the volume that any layout would need at least; it is beyond all reason (or infinite, then absent).
+	// WorkKJ is what the loads do on the motion, less what limited feet and kept members can absorb.
+	WorkKJ float64 `json:"work_kj"`
+	// LeastVolumeM3 is the volume that any layout would need at least: beyond all reason; absent if it has no end.
 	LeastVolumeM3 float64 `json:"least_volume_m3,omitempty"`
 	Text          string  `json:"text"`
 }

@@ -1,6 +1,7 @@
 package layout
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"slices"
@@ -161,22 +162,10 @@ func motion(u []geom.Vec, scale float64) [][3]float64 {
 const namedWork = 0.05
 
 func recordCollapse(s *ground.Structure, c *Collapse) *RecordCollapse {
-	out := &RecordCollapse{Cases: []string{}, Nodes: []int{}}
-	first := -1
-	for k, w := range c.Work {
-		if w > 0 {
-			out.Cases = append(out.Cases, s.Cases[k].Name)
-		}
-		if first < 0 || w > c.Work[first] {
-			first = k
-		}
-	}
-	if first < 0 {
-		return out
-	}
+	out := &RecordCollapse{Case: s.Cases[c.Case].Name, Nodes: []int{}, Motion: motion(c.Motion, 1), WorkKJ: c.Work / kilo}
 	work := make([]float64, len(s.Nodes))
-	for _, l := range s.Cases[first].Loads {
-		work[l.Node] += l.Force.Dot(c.Motion[first][l.Node])
+	for _, l := range s.Cases[c.Case].Loads {
+		work[l.Node] += l.Force.Dot(c.Motion[l.Node])
 	}
 	top := slices.Max(work)
 	for i, w := range work {
@@ -184,16 +173,7 @@ func recordCollapse(s *ground.Structure, c *Collapse) *RecordCollapse {
 			out.Nodes = append(out.Nodes, i)
 		}
 	}
-	slices.SortStableFunc(out.Nodes, func(a, b int) int {
-		switch {
-		case work[a] > work[b]:
-			return -1
-		case work[a] < work[b]:
-			return 1
-		}
-		return 0
-	})
-	out.Motion = motion(c.Motion[first], 1)
+	slices.SortStableFunc(out.Nodes, func(a, b int) int { return cmp.Compare(work[b], work[a]) })
 	if !math.IsInf(c.LeastVolume, 1) {
 		out.LeastVolumeM3 = c.LeastVolume
 	}
@@ -203,11 +183,11 @@ func recordCollapse(s *ground.Structure, c *Collapse) *RecordCollapse {
 
 func collapseText(s *ground.Structure, c *RecordCollapse) string {
 	if len(c.Nodes) == 0 {
-		return fmt.Sprintf("No layout carries the weight of its own bars in case %q.", c.Cases[0])
+		return fmt.Sprintf("No layout carries the weight of its own bars in case %q.", c.Case)
 	}
 	at := s.Nodes[c.Nodes[0]].At
 	return fmt.Sprintf("No layout of the candidate bars and feet carries case %q: its loads move %d loaded nodes, most at (%.2f, %.2f, %.2f) m, "+
-		"and nothing resists. Give that place a foot, a wall or room for bars, or let the feet take more.", c.Cases[0], len(c.Nodes), at.X, at.Y, at.Z)
+		"and nothing resists. Give that place a foot, a wall or room for bars, or let the feet take more.", c.Case, len(c.Nodes), at.X, at.Y, at.Z)
 }
 
 // ParseStatus returns the status of a record.

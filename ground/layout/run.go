@@ -170,30 +170,31 @@ func (st *study) bars(d *design) {
 	}
 }
 
-// collapse turns the displacements of v into evidence.
+// collapse turns the displacements of v into evidence: the motion of the case that asks for the most volume.
 func (st *study) collapse(v *solved) *Collapse {
-	c := &Collapse{Work: make([]float64, len(st.s.Cases)), Motion: zeroMotion(st.s)}
-	top := 0.0
+	var out *Collapse
 	for i, k := range v.cases {
-		c.Motion[k] = v.u[i]
+		p := st.prog.problem(nil, []int{k})
+		u := v.sol.Displacement[i : i+1]
+		top := 0.0
 		for _, w := range v.u[i] {
-			for _, x := range w.Array() {
-				top = math.Max(top, math.Abs(x))
-			}
+			top = math.Max(top, math.Max(math.Abs(w.X), math.Max(math.Abs(w.Y), math.Abs(w.Z))))
+		}
+		c := &Collapse{Case: k, Work: st.dual(p, u, 1), LeastVolume: math.Inf(1)}
+		if top == 0 || !(c.Work > 0) {
+			continue
+		}
+		f := st.pricer.price(v.u[i:i+1], st.gravity([]int{k}), math.Inf(1))
+		if f.worst > 0 {
+			c.LeastVolume = c.Work / f.worst
+		}
+		c.Work /= top
+		for _, w := range v.u[i] {
+			c.Motion = append(c.Motion, w.Scale(1/top))
+		}
+		if out == nil || c.LeastVolume > out.LeastVolume {
+			out = c
 		}
 	}
-	for k := range c.Motion {
-		for i := range c.Motion[k] {
-			c.Motion[k][i] = c.Motion[k][i].Scale(1 / math.Max(top, 1e-300))
-		}
-		for _, l := range st.s.Cases[k].Loads {
-			c.Work[k] += l.Force.Dot(c.Motion[k][l.Node])
-		}
-	}
-	f := st.pricer.price(v.u, st.gravity(v.cases), math.Inf(1))
-	c.LeastVolume = math.Inf(1)
-	if f.worst > 0 {
-		c.LeastVolume = st.dual(v.problem, v.sol.Displacement, 1) / f.worst
-	}
-	return c
+	return out
 }

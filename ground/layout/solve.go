@@ -62,9 +62,10 @@ type Round struct {
 
 // Collapse is the evidence that no layout exists.
 type Collapse struct {
-	Work        []float64    // per case: work of its loads on its motion
-	Motion      [][]geom.Vec // [case][node], scaled so that the largest component is 1
-	LeastVolume float64      // any layout needs at least this much, m3; +Inf if no bar resists the motion at all
+	Case        int        // the case whose loads drive the motion
+	Motion      []geom.Vec // [node], scaled so that the largest component is 1
+	Work        float64    // of the loads on the motion, less what feet and kept members can absorb, J
+	LeastVolume float64    // any layout needs at least this much, m3; +Inf if no bar resists the motion at all
 }
 
 // Meta is what a record says beside the result.
