@@ -31,6 +31,9 @@ type Solution struct {
 	Objective    float64 // sum c_i a_i
 	Bound        float64 // dual value of Displacement after scaling to feasibility over the bars of this problem
 	Iterations   int
+	// Warm is a point on the way to the solution from which a similar problem is best started: the solution itself is too
+	// near the border. Nil if the solver has none.
+	Warm *Start
 	// Raw is true if Area and Force do not satisfy equilibrium (nothing feasible was found).
 	Raw bool
 }
@@ -52,7 +55,8 @@ type Solver interface {
 	Solve(ctx context.Context, p *Problem, start *Start, set Settings) (*Solution, error)
 }
 
-// Start is a primal and dual point to start from; a solver may ignore it.
+// Start is a primal and dual point to start from, in the order of the problem that it is for; a solver may ignore it.
+// Forces are to be near equilibrium; areas may be too small and displacements too large: the solver mends that.
 type Start struct {
 	Area         []float64
 	Force        [][]float64

@@ -18,6 +18,7 @@ type study struct {
 	active *active
 	opt    Options
 	result *Result
+	warm   warm
 	rounds int
 	// Interior-point iterations of all rounds of member adding.
 	iterations int
@@ -67,13 +68,14 @@ func (st *study) grow(ctx context.Context, cases []int, target float64, from *so
 	gravity := st.gravity(cases)
 	for {
 		v.problem = st.prog.problem(st.active.pairs, cases)
-		sol, err := st.opt.Solver.Solve(ctx, v.problem, nil, lp.Settings{Gap: gap})
+		sol, err := st.opt.Solver.Solve(ctx, v.problem, st.warm.start(st, cases), lp.Settings{Gap: gap})
 		if err != nil {
 			return nil, err
 		}
 		st.rounds++
 		st.iterations += sol.Iterations
 		v.sol = sol
+		st.warm.keep(st, cases, sol)
 		if sol.Status == lp.Cancelled {
 			return v, nil
 		}

@@ -53,12 +53,13 @@ type target struct{ cp, cm, cz []float64 }
 const (
 	refineSteps = 6
 	refineShare = 1e-3
-	refineFloor = 1e-13
+	refineFloor = 1e-11
 )
 
-// direction solves the Newton system for the given residuals and target. The result is in d, with d.p and the other
+// direction solves the Newton system for the given residuals and target, refined on the true balance of forces if that
+// is wanted: a predictor does without. The result is in d, with d.p and the other
 // fields as changes of the iterate's.
-func (sys *system) direction(x *iterate, w *weights, r residuals, g target, d *iterate) {
+func (sys *system) direction(x *iterate, w *weights, r residuals, g target, refined bool, d *iterate) {
 	s, k := sys.s, sys.s.cases
 	rhs := make([]float64, sys.size)
 	y := make([]float64, s.bars*k) // re - (cp/p - cm/m)
@@ -96,7 +97,9 @@ func (sys *system) direction(x *iterate, w *weights, r residuals, g target, d *i
 	copy(d.u, rhs)
 	sys.factor.Solve(d.u)
 	sys.follow(w, y, pull, d)
-	sys.refine(w, r.force, y, pull, math.Max(refineFloor, refineShare*worst), d)
+	if refined {
+		sys.refine(w, r.force, y, pull, math.Max(refineFloor, refineShare*worst), d)
+	}
 	s.slacks(x, g, d)
 }
 

@@ -1,6 +1,9 @@
 package interior
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // iterate is a primal-dual point. Arrays over bars and cases are laid out [bar * cases + case].
 type iterate struct {
@@ -15,6 +18,11 @@ func newIterate(s *scaled, size int) *iterate {
 	n, nk := s.bars, s.bars*s.cases
 	return &iterate{a: make([]float64, n), z: make([]float64, n), pi: make([]float64, n), q: make([]float64, nk), p: make([]float64, nk),
 		m: make([]float64, nk), yp: make([]float64, nk), ym: make([]float64, nk), u: make([]float64, size)}
+}
+
+func (x *iterate) clone() *iterate {
+	c := slices.Clone[[]float64]
+	return &iterate{a: c(x.a), z: c(x.z), pi: c(x.pi), q: c(x.q), p: c(x.p), m: c(x.m), yp: c(x.yp), ym: c(x.ym), u: c(x.u)}
 }
 
 // residuals of the optimality conditions at a point.

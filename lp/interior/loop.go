@@ -13,10 +13,15 @@ const (
 	stepTightly = 0.9995
 )
 
+// The point for a warm start is kept when the gap is below this many times the wanted one: nearer to the solution, a
+// point is too near the border for a changed problem (found by trial).
+const warmGap = 5
+
 // outcome of the loop.
 type outcome struct {
 	status     lp.Status
 	iterations int
+	warm       *iterate // kept on the way, or nil
 }
 
 // run follows the central path from x until the gap and the residuals are below the settings (Mehrotra 1992:
@@ -27,6 +32,7 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 	d := newIterate(s, sys.size)
 	g := target{cp: make([]float64, s.bars*s.cases), cm: make([]float64, s.bars*s.cases), cz: make([]float64, s.bars)}
 	stuck := 0
+	var warm *iterate
 	for it := done; ; it++ {
 		r := sys.residuals(x)
 		sum, count := s.complementarity(x)
@@ -35,26 +41,29 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 		if set.Progress != nil {
 			set.Progress(lp.Iteration{Number: it, Objective: primal * s.force * s.lambda, Bound: dual * s.force * s.lambda, Residual: largest(r.force)})
 		}
+		if warm == nil && math.Abs(primal-dual) <= warmGap*gap*math.Abs(primal) {
+			warm = x.clone()
+		}
 		switch {
 		case sys.converged(r, primal, dual, gap, set):
-			return outcome{lp.Optimal, it}, nil
+			return outcome{lp.Optimal, it, warm}, nil
 		case it >= set.Iterations:
-			return outcome{lp.IterationLimit, it}, nil
+			return outcome{lp.IterationLimit, it, warm}, nil
 		case stuck >= 4 || math.IsNaN(primal+dual):
-			return outcome{lp.Trouble, it}, nil
+			return outcome{lp.Trouble, it, warm}, nil
 		}
 		s.weigh(x, w)
 		if err := sys.assemble(ctx, w); err != nil {
-			return outcome{lp.Cancelled, it}, err
+			return outcome{lp.Cancelled, it, warm}, err
 		}
 		s.aim(x, nil, 0, g)
-		sys.direction(x, w, r, g, d)
+		sys.direction(x, w, r, g, false, d)
 		ap, ad := s.longest(x, d)
 		after := s.complementarityAfter(x, d, ap, ad) / float64(count)
 		centre := math.Pow(after/mu, 3)
 		floor := 0.1 * gap * math.Max(math.Abs(primal), 1e-12) / float64(count)
 		s.aim(x, d, math.Max(centre*mu, floor), g)
-		sys.direction(x, w, r, g, d)
+		sys.direction(x, w, r, g, true, d)
 		ap, ad = s.longest(x, d)
 		share := math.Max(stepShare, 1-math.Min(1, mu/math.Max(math.Abs(primal), 1e-300)*float64(count)))
 		share = math.Min(share, stepTightly)

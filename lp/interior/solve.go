@@ -34,8 +34,8 @@ const artificialInUse = 1e-5
 // An elastic start that leaves this share of the largest load unbalanced is a mechanism.
 const mechanismShare = 1e-7
 
-// Solve implements lp.Solver. A start is not used.
-func (Solver) Solve(ctx context.Context, p *lp.Problem, _ *lp.Start, set lp.Settings) (*lp.Solution, error) {
+// Solve implements lp.Solver.
+func (Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set lp.Settings) (*lp.Solution, error) {
 	set, err := set.WithDefaults()
 	if err != nil {
 		return nil, err
@@ -50,6 +50,11 @@ func (Solver) Solve(ctx context.Context, p *lp.Problem, _ *lp.Start, set lp.Sett
 	sys, err := newSystem(s, p)
 	if err != nil {
 		return nil, err
+	}
+	if fits(start, p) {
+		if sol, err := solveFrom(ctx, p, sys, nil, sys.warm(p, start), set, 0); err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled {
+			return sol, err
+		}
 	}
 	d, unbalanced, err := sys.elastic(ctx)
 	if err != nil {
@@ -112,6 +117,7 @@ func solveWithPenalty(ctx context.Context, p *lp.Problem, s *scaled, set lp.Sett
 // solveFrom runs the method from x and finishes the answer. plain is the system without artificial forces, or nil if
 // sys has none. Status NoEquilibrium means that artificial forces are in use.
 func solveFrom(ctx context.Context, p *lp.Problem, sys, plain *system, x *iterate, set lp.Settings, done int) (*lp.Solution, error) {
+	var warm *lp.Start
 	gap := set.Gap / 2 // half for the path, half for scaling the displacements and repairing the forces
 	for {
 		out, err := sys.run(ctx, x, gap, set, done)
@@ -137,6 +143,10 @@ func solveFrom(ctx context.Context, p *lp.Problem, sys, plain *system, x *iterat
 		y := final.repair(ctx, x, set)
 		sol := final.answer(p, y)
 		sol.Status, sol.Iterations = out.status, done
+		if out.warm != nil {
+			warm = sys.keep(out.warm)
+		}
+		sol.Warm = warm
 		closed := set.Closed(sol.Objective, sol.Bound)
 		if closed || out.status != lp.Optimal || gap < 1e-3*set.Gap {
 			if sol.Status == lp.Trouble && closed && !sol.Raw {
