@@ -52,6 +52,9 @@ func Solve(ctx context.Context, s *ground.Structure, opt Options) (*Result, erro
 	if err != nil {
 		return nil, err
 	}
+	if v.sol.Status == lp.Optimal {
+		d = st.tidy(ctx, v, d, rank)
+	}
 	st.finish(v, d)
 	return st.result, nil
 }

@@ -18,7 +18,7 @@ type Options struct {
 
 // Progress is a report while a layout is being found.
 type Progress struct {
-	Stage         string  // "candidates", "layout", "cases", "certificate"
+	Stage         string  // "candidates", "layout", "cases", "tidying"
 	Done          float64 // share of the stage that is done, 0 to 1; an estimate
 	Round         int
 	Cases, AllOf  int // cases in the program so far, of all
