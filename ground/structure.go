@@ -38,6 +38,12 @@ type Structure struct {
 	Kept       []Kept
 	Rules      Rules
 	Deck       Deck
+	// Tributary is the plan area of roof that each node carries, m2; 0 for nodes off the roof. Nil if the structure was
+	// not made by Build.
+	Tributary []float64
+	// Omitted names the combinations that were left out because no layout for the Cases can fail under them (see
+	// essential).
+	Omitted []string
 }
 
 // Deck says how the roof carries load between its nodes.
@@ -58,6 +64,7 @@ type Case struct {
 	Name    string
 	Gravity float64 // factor on the self-weight of the bars; 0 leaves it out
 	Loads   []NodeLoad
+	Factors []Factor // the actions in the case with their factors; may be nil
 }
 
 // NodeLoad is a force in N on a node.
