@@ -145,3 +145,10 @@ func (b *bars) draw(done float64, text string) {
 	fmt.Fprint(b.w, "\r"+line+"\x1b[K")
 	b.open = true
 }
+
+// silent tells issues only.
+type silent struct{ *lines }
+
+func (silent) Begin(string)                      {}
+func (silent) Step(pipeline.Step)                {}
+func (silent) End(string, string, time.Duration) {}

@@ -35,6 +35,7 @@ type Outcome struct {
 	Issues    geom.Issues    // all of them, in the order in which they were found
 	Dir       string
 	Files     []string // names of the files in Dir
+	Summary   string   // what a person reads first, in lines
 	Took      time.Duration
 }
 
