@@ -86,12 +86,6 @@ func (sys *system) withoutArtificial(x *iterate) *iterate {
 	return &iterate{a: x.a[:n], z: x.z[:n], pi: x.pi[:n], q: x.q[:nk], p: x.p[:nk], m: x.m[:nk], yp: x.yp[:nk], ym: x.ym[:nk], u: x.u}
 }
 
-// withArtificialFrom undoes withoutArtificial: the slices still have their full length behind them.
-func (sys *system) withArtificialFrom(x *iterate) *iterate {
-	n, nk := sys.s.bars, sys.s.bars*sys.s.cases
-	return &iterate{a: x.a[:n], z: x.z[:n], pi: x.pi[:n], q: x.q[:nk], p: x.p[:nk], m: x.m[:nk], yp: x.yp[:nk], ym: x.ym[:nk], u: x.u}
-}
-
 // A bar that is stressed beyond this share of its strength, or a limit passed by it, makes an answer raw.
 const strengthShare = 1e-9
 
@@ -113,25 +107,10 @@ func (sys *system) answer(p *lp.Problem, x *iterate) *lp.Solution {
 			sol.Force[c][i] = x.q[i*s.cases+c] * s.force
 		}
 	}
-	sys.snap(x, sol)
 	p.Settle(sol.Displacement)
 	sol.Bound, _ = lp.Bound(p, sol.Displacement)
 	sol.Raw = s.broken(x) || largest(sys.unbalanced(x.q, x.a)) > 1e-7
 	return sol
-}
-
-// snap calls an objective of nothing but rounding zero: a load that fixed bars carry alone.
-func (sys *system) snap(x *iterate, sol *lp.Solution) {
-	s := sys.s
-	sum := 0.0
-	for i := range s.real {
-		if !s.fixed[i] {
-			sum += s.cost[i] * x.a[i]
-		}
-	}
-	if sum < 1e-9 {
-		sol.Objective = math.Max(sol.Objective, 0)
-	}
 }
 
 // broken reports whether a force is beyond what its bar's area carries.
@@ -167,9 +146,9 @@ func (sys *system) displacement(u []float64, scale float64) [][]float64 {
 const rayShare = 1e-6
 
 // collapse returns a solution with the motion d as evidence, if it proves that there is no equilibrium.
-func collapse(p *lp.Problem, sys *system, d []float64, lambda float64) *lp.Solution {
+func collapse(p *lp.Problem, sys *system, d []float64) *lp.Solution {
 	u := sys.displacement(d, 1)
-	normalise(p, u)
+	normalise(u)
 	work := 0.0
 	for c, k := range p.Cases {
 		for r, f := range k.Load {
@@ -190,7 +169,7 @@ func collapse(p *lp.Problem, sys *system, d []float64, lambda float64) *lp.Solut
 }
 
 // normalise scales a motion so that its largest component is 1.
-func normalise(p *lp.Problem, u [][]float64) {
+func normalise(u [][]float64) {
 	top := 0.0
 	for _, k := range u {
 		top = math.Max(top, largest(k))

@@ -61,7 +61,7 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 		ap, ad := s.longest(x, d)
 		after := s.complementarityAfter(x, d, ap, ad) / float64(count)
 		centre := math.Pow(after/mu, 3)
-		floor := 0.1 * gap * math.Max(math.Abs(primal), 1e-12) / float64(count)
+		floor := 0.1 * math.Max(gap*math.Abs(primal), nothingShare/2) / float64(count)
 		s.aim(x, d, math.Max(centre*mu, floor), g)
 		sys.direction(x, w, r, g, true, d)
 		ap, ad = s.longest(x, d)
@@ -80,9 +80,8 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 // converged reports whether the point is good enough: gap, balance of forces, and prices within a share of the gap.
 func (sys *system) converged(r residuals, primal, dual, gap float64, set lp.Settings) bool {
 	s := sys.s
-	scale := math.Max(math.Abs(primal), 1e-9)
-	absolute := gap / set.Gap * set.Absolute / (s.force * s.lambda)
-	if !(math.Abs(primal-dual) <= math.Max(gap*scale, absolute)) || largest(r.force) > 1e2*set.Residual {
+	absolute := math.Max(gap/set.Gap*set.Absolute/(s.force*s.lambda), nothingShare/2)
+	if !(math.Abs(primal-dual) <= math.Max(gap*math.Abs(primal), absolute)) || largest(r.force) > 1e2*set.Residual {
 		return false
 	}
 	for i, rc := range r.price {

@@ -27,6 +27,7 @@ type scaled struct {
 	weighs            bool      // some case has gravity and some bar weight
 }
 
+// newScaled returns nil for a problem without any load.
 func newScaled(p *lp.Problem) *scaled {
 	b := &p.Bars
 	n := b.Len()
@@ -39,9 +40,10 @@ func newScaled(p *lp.Problem) *scaled {
 		for _, f := range c.Load {
 			s.force = math.Max(s.force, math.Abs(f))
 		}
+		s.force = math.Max(s.force, fixedWeight(b, c.Gravity))
 	}
 	if s.force == 0 {
-		s.force = 1
+		return nil
 	}
 	s.scaleBars(b)
 	for _, c := range p.Cases {
@@ -52,6 +54,19 @@ func newScaled(p *lp.Problem) *scaled {
 		s.load = append(s.load, f)
 	}
 	return s
+}
+
+// fixedWeight returns the largest force that the weight of a fixed bar puts on a row.
+func fixedWeight(b *lp.Bars, gravity float64) float64 {
+	top := 0.0
+	for i, fixed := range b.Fixed {
+		if fixed {
+			for _, h := range b.H[b.Ptr[i]:b.Ptr[i+1]] {
+				top = math.Max(top, math.Abs(gravity*h*b.Upper[i]))
+			}
+		}
+	}
+	return top
 }
 
 func (s *scaled) scaleBars(b *lp.Bars) {

@@ -19,23 +19,26 @@ type Solver struct{}
 // Name returns "interior".
 func (Solver) Name() string { return "interior" }
 
-// Penalty of an artificial force, in units of the mean cost of a unit of force: the first, the factor at each further
-// try, and how many tries. A problem that still leans on artificial forces at the last has no equilibrium: any layout
-// would need more than that price.
-const (
-	firstPenalty  = 1e3
-	penaltyFactor = 1e3
-	penalties     = 3
-)
+// Penalties of an artificial force, in units of the mean cost of a unit of force, in turn. A problem that still leans on
+// artificial forces at the last has no equilibrium: any layout would need about that price.
+var penalties = []float64{1e3, 1e8}
+
+// The gap at which a problem at the last penalty shows whether it leans on artificial forces: its objective is then
+// either of the order of 1 or of the penalty.
+const leanGap = 1e-2
 
 // An artificial force above this share of the largest load, when the gap is closed, is in use.
-const artificialInUse = 1e-5
+const artificialInUse = 1e-6
 
 // An elastic start that leaves this share of the largest load unbalanced is a mechanism.
 const mechanismShare = 1e-7
 
+// An objective of this much, in units of the cost of carrying the largest load by one mean bar, counts as nothing: loads
+// that kept bars carry alone. The gap is then measured against it.
+const nothingShare = 1e-10
+
 // Solve implements lp.Solver.
-func (Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set lp.Settings) (*lp.Solution, error) {
+func (s Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set lp.Settings) (*lp.Solution, error) {
 	set, err := set.WithDefaults()
 	if err != nil {
 		return nil, err
@@ -43,16 +46,24 @@ func (Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set lp.
 	if err := p.Validate(); err != nil {
 		return nil, err
 	}
-	s := newScaled(p)
-	if len(p.Cases) == 0 || noLoad(s) && !s.weighs {
+	if live, index := withoutDead(p); live != nil {
+		sol, err := s.Solve(ctx, live, nil, set)
+		if err != nil {
+			return nil, err
+		}
+		return revive(p, sol, index), nil
+	}
+	sc := newScaled(p)
+	if len(p.Cases) == 0 || sc == nil {
 		return nothing(p), nil
 	}
-	sys, err := newSystem(s, p)
+	sys, err := newSystem(sc, p)
 	if err != nil {
 		return nil, err
 	}
 	if fits(start, p) {
-		if sol, err := solveFrom(ctx, p, sys, nil, sys.warm(p, start), set, 0); err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled {
+		sol, err := solveFrom(ctx, p, sys, nil, sys.warm(p, start), set, 0)
+		if err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled {
 			return sol, err
 		}
 	}
@@ -61,14 +72,14 @@ func (Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set lp.
 		return cancelled(p), nil
 	}
 	if unbalanced > mechanismShare {
-		if sol := collapse(p, sys, d, s.lambda); sol != nil {
+		if sol := collapse(p, sys, d); sol != nil {
 			return sol, nil
 		}
 	}
-	if unbalanced <= mechanismShare && !s.limited() {
+	if unbalanced <= mechanismShare && !sc.limited() {
 		return solveFrom(ctx, p, sys, nil, sys.start(d), set, 0)
 	}
-	return solveWithPenalty(ctx, p, s, set)
+	return solveWithPenalty(ctx, p, sys, set)
 }
 
 // limited reports whether the elastic start may be out of bounds.
@@ -85,16 +96,10 @@ func (s *scaled) limited() bool {
 }
 
 // solveWithPenalty solves with artificial forces, at rising prices as long as they are in use.
-func solveWithPenalty(ctx context.Context, p *lp.Problem, s *scaled, set lp.Settings) (*lp.Solution, error) {
-	plain, err := newSystem(s, p)
-	if err != nil {
-		return nil, err
-	}
-	penalty := firstPenalty
+func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.Settings) (*lp.Solution, error) {
 	iterations := 0
-	for try := 1; ; try++ {
-		t := s.withArtificial(penalty)
-		sys, err := newSystem(t, p)
+	for try, penalty := range penalties {
+		sys, err := newSystem(plain.s.withArtificial(penalty), p)
 		if err != nil {
 			return nil, err
 		}
@@ -102,16 +107,30 @@ func solveWithPenalty(ctx context.Context, p *lp.Problem, s *scaled, set lp.Sett
 		if err != nil {
 			return cancelled(p), nil
 		}
-		sol, err := solveFrom(ctx, p, sys, plain, sys.start(d), set, iterations)
-		if err != nil || sol.Status != lp.NoEquilibrium {
+		x := sys.start(d)
+		if try == len(penalties)-1 {
+			out, err := sys.run(ctx, x, leanGap, set, iterations)
+			if err == nil && sys.leans(x) {
+				return sys.noEquilibrium(p, x, out), nil
+			}
+			iterations = out.iterations
+		}
+		sol, err := solveFrom(ctx, p, sys, plain, x, set, iterations)
+		if err != nil || sol.Status != lp.NoEquilibrium || try == len(penalties)-1 {
 			return sol, err
 		}
-		if try == penalties {
-			return sol, nil
-		}
 		iterations = sol.Iterations
-		penalty *= penaltyFactor
 	}
+	panic("interior: no penalties")
+}
+
+// noEquilibrium is the answer whose artificial forces are in use: the displacements are the motion that proves it.
+func (sys *system) noEquilibrium(p *lp.Problem, x *iterate, out outcome) *lp.Solution {
+	sol := sys.answer(p, x)
+	sol.Status, sol.Raw, sol.Iterations = lp.NoEquilibrium, true, out.iterations
+	normalise(sol.Displacement)
+	p.Settle(sol.Displacement)
+	return sol
 }
 
 // solveFrom runs the method from x and finishes the answer. plain is the system without artificial forces, or nil if
@@ -119,48 +138,40 @@ func solveWithPenalty(ctx context.Context, p *lp.Problem, s *scaled, set lp.Sett
 func solveFrom(ctx context.Context, p *lp.Problem, sys, plain *system, x *iterate, set lp.Settings, done int) (*lp.Solution, error) {
 	var warm *lp.Start
 	gap := set.Gap / 2 // half for the path, half for scaling the displacements and repairing the forces
+	final := sys
+	strip := func(x *iterate) *iterate { return x }
+	if plain != nil {
+		final, strip = plain, sys.withoutArtificial
+	}
 	for {
 		out, err := sys.run(ctx, x, gap, set, done)
 		if err != nil {
-			sol := sys.answer(p, x)
+			sol := final.answer(p, strip(x))
 			sol.Status, sol.Iterations = lp.Cancelled, out.iterations
 			return sol, nil
 		}
 		done = out.iterations
-		if sys.leans(x) {
-			if out.status == lp.Optimal || out.status == lp.Trouble {
-				sol := sys.answer(p, x)
-				sol.Status, sol.Raw, sol.Iterations = lp.NoEquilibrium, true, done
-				normalise(p, sol.Displacement)
-				return sol, nil
-			}
+		if sys.leans(x) && out.status != lp.IterationLimit {
+			return sys.noEquilibrium(p, x, out), nil
 		}
-		final := sys
-		if plain != nil {
-			final = plain
-			x = sys.withoutArtificial(x)
-		}
-		y := final.repair(ctx, x, set)
-		sol := final.answer(p, y)
+		sol := final.answer(p, final.repair(ctx, strip(x), set))
 		sol.Status, sol.Iterations = out.status, done
 		if out.warm != nil {
 			warm = sys.keep(out.warm)
 		}
 		sol.Warm = warm
-		closed := set.Closed(sol.Objective, sol.Bound)
-		if closed || out.status != lp.Optimal || gap < 1e-3*set.Gap {
-			if sol.Status == lp.Trouble && closed && !sol.Raw {
-				sol.Status = lp.Optimal
-			}
-			if sol.Status == lp.Optimal && (!closed || sol.Raw) {
-				sol.Status = lp.Trouble
-			}
-			return sol, nil
+		closed := set.Closed(sol.Objective, sol.Bound) || sol.Objective-sol.Bound <= nothingShare*final.s.force*final.s.lambda
+		if !closed && out.status == lp.Optimal && gap >= 1e-3*set.Gap {
+			gap /= 4
+			continue
 		}
-		if plain != nil { // go on in the system that has the artificial forces
-			x = sys.withArtificialFrom(x)
+		good := closed && !sol.Raw
+		if good && sol.Status == lp.Trouble {
+			sol.Status = lp.Optimal
+		} else if !good && sol.Status == lp.Optimal {
+			sol.Status = lp.Trouble
 		}
-		gap /= 4
+		return sol, nil
 	}
 }
 
@@ -172,13 +183,4 @@ func (sys *system) leans(x *iterate) bool {
 		}
 	}
 	return false
-}
-
-func noLoad(s *scaled) bool {
-	for _, f := range s.load {
-		if largest(f) > 0 {
-			return false
-		}
-	}
-	return true
 }

@@ -9,17 +9,17 @@ import (
 // A warm start scales displacements so that the dearest bar is at this share of its cost.
 const warmSpare = 0.98
 
-// fits reports whether a start has the shape of the problem.
+// fits reports whether a start has the shape of the problem and finite numbers.
 func fits(start *lp.Start, p *lp.Problem) bool {
 	if start == nil || len(start.Area) != p.Bars.Len() || len(start.Force) != len(p.Cases) || len(start.Displacement) != len(p.Cases) {
 		return false
 	}
 	for k := range p.Cases {
-		if len(start.Force[k]) != p.Bars.Len() || len(start.Displacement[k]) != p.Rows {
+		if len(start.Force[k]) != p.Bars.Len() || len(start.Displacement[k]) != p.Rows || !finite(start.Force[k]) || !finite(start.Displacement[k]) {
 			return false
 		}
 	}
-	return true
+	return finite(start.Area)
 }
 
 // keep turns a point into a start in the caller's units.
@@ -128,4 +128,14 @@ func (sys *system) warmBar(x *iterate, i int, mu float64) {
 		}
 		x.p[j], x.m[j] = s.st[i]*x.a[i]-x.q[j], s.sc[i]*x.a[i]+x.q[j]
 	}
+}
+
+// finite reports whether x holds no NaN, no infinity and nothing so large that its square overflows.
+func finite(x []float64) bool {
+	for _, v := range x {
+		if !(math.Abs(v) < 1e150) {
+			return false
+		}
+	}
+	return true
 }
