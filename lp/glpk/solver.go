@@ -1,8 +1,6 @@
 // Package glpk solves the layout program with the simplex method of the C library GLPK 5, as a second opinion on the
 // project's own solver: nothing is shared but the statement of the problem. It returns a vertex, exact to rounding. It is
 // built with the tag glpk (cgo); without the tag Solve returns an error that says what to install.
-//
-// GLPK ends the process if it runs out of memory; nothing else of it reaches the caller but results.
 package glpk
 
 // Solver is GLPK's dual simplex method. The zero value is ready for use, from several goroutines. A start is not used.

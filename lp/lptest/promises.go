@@ -26,6 +26,7 @@ func promises() []check {
 		{"the problem is left as it was", untouched},
 		{"the same answer twice, and at once", repeatable},
 		{"a start does no harm", started},
+		{"a start from fewer bars does no harm", startedFromLess},
 		{"an iteration limit is no error", limitedIterations},
 		{"a gap that is asked for loosely is kept", loose},
 	}
@@ -141,23 +142,6 @@ func repeatable(s lp.Solver) error {
 		if !reflect.DeepEqual(sols[i], sols[0]) {
 			return fmt.Errorf("two solves of one problem differ: objectives %v and %v", sols[i].Objective, sols[0].Objective)
 		}
-	}
-	return nil
-}
-
-func started(s lp.Solver) error {
-	p := randomProblem(3, 6, false)
-	first, err := solve(s, p)
-	if err != nil {
-		return err
-	}
-	start := &lp.Start{Area: first.Area, Force: first.Force, Displacement: first.Displacement}
-	again, err := s.Solve(context.Background(), p, start, lp.Settings{Gap: AskedGap})
-	if err != nil {
-		return err
-	}
-	if again.Status != lp.Optimal || !near(again.Objective, first.Objective, costUnit(p)) {
-		return fmt.Errorf("status %v, objective %.12g; without a start %.12g", again.Status, again.Objective, first.Objective)
 	}
 	return nil
 }
