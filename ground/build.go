@@ -47,7 +47,7 @@ func (b *builder) prepare() {
 	s := b.spec
 	b.keepClear, b.envelope = geom.NewObstacles(b.site.KeepClear), geom.NewEnvelope(b.site.Envelope)
 	b.grid = newGridFrame(b.site.Roofs, s.GridBearing)
-	b.near = index{size: max(s.InnerSpacing, sameNode), cells: map[[2]int][]int{}}
+	b.near = index{size: max(s.InnerSpacing, keptSnap), cells: map[[2]int][]int{}}
 	var all []area
 	for _, r := range b.site.Roofs {
 		var p roofPlan

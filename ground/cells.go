@@ -2,7 +2,6 @@ package ground
 
 import (
 	"math"
-	"slices"
 
 	"boughwork/geom"
 )
@@ -23,7 +22,7 @@ type deck struct {
 	rings   [][][]ringStop // nodes (indices into nodes) along every ring of every area
 	nodes   []int          // numbers in the structure
 	at      []geom.Vec     // their places from origin
-	cells   []ring         // Voronoi cells, convex, clipped to the box round the roof
+	cells   []cell         // Voronoi cells, clipped to the box round the roof
 	plan    []float64      // tributary area of each node, m2
 	reach   float64        // deck spacing, m
 	needed  float64        // least radius of gyration of the nodes that take up a moment, m
@@ -57,7 +56,8 @@ func (b *builder) newDeck(i int) *deck {
 			return mapped(stops, func(s ringStop) ringStop { return ringStop{s.along, local[s.node]} })
 		}))
 	}
-	d.cells = voronoi(d.at, d.box())
+	d.index = planIndex(d.at, d.box())
+	d.cells = voronoi(d.at, d.box(), d.index)
 	d.whole = d.pieces(Pattern{})
 	d.plan = make([]float64, len(d.nodes))
 	for _, p := range d.whole {
@@ -82,19 +82,14 @@ func (d *deck) box() ring {
 
 // voronoi returns for every node the part of a convex ring that is nearer to it in plan than to any other (Voronoi 1908),
 // cut by the bisectors with the nodes around it, near ones first, until no further one can reach the cell.
-func voronoi(at []geom.Vec, box ring) []ring {
-	lo, hi := box.box()
-	x := index{size: math.Sqrt((hi[0] - lo[0]) * (hi[1] - lo[1]) / float64(len(at))), cells: map[[2]int][]int{}}
-	for i, v := range at {
-		x.add(pt{v.X, v.Y}, i)
-	}
-	cells := make([]ring, len(at))
+func voronoi(at []geom.Vec, box ring, x *index) []cell {
+	cells := make([]cell, len(at))
 	for i, v := range at {
 		p := pt{v.X, v.Y}
-		cell := slices.Clone(box)
+		c := cell{box, box.halves()}
 		for k := 0; ; k++ {
 			var far float64
-			for _, q := range cell {
+			for _, q := range c.ring {
 				far = math.Max(far, distance(p, q))
 			}
 			// The nodes in rings of cells up to k are all those within (k - 1) cells, at least.
@@ -107,12 +102,22 @@ func voronoi(at []geom.Vec, box ring) []ring {
 				if n == (pt{}) {
 					continue
 				}
-				cell = cell.clip(n, (n[0]*(p[0]+q[0])+n[1]*(p[1]+q[1]))/2)
+				c = c.cut(half{n, (n[0]*(p[0]+q[0]) + n[1]*(p[1]+q[1])) / 2})
 			}
 		}
-		cells[i] = cell
+		cells[i] = c
 	}
 	return cells
+}
+
+// planIndex returns an index of places with about one to a cell.
+func planIndex(at []geom.Vec, box ring) *index {
+	lo, hi := box.box()
+	x := &index{size: math.Sqrt((hi[0] - lo[0]) * (hi[1] - lo[1]) / float64(len(at))), cells: map[[2]int][]int{}}
+	for i, v := range at {
+		x.add(pt{v.X, v.Y}, i)
+	}
+	return x
 }
 
 // around returns the entries in the square ring of cells k steps away from that of p, in a fixed order.
@@ -136,14 +141,14 @@ func (d *deck) pieces(pattern Pattern) []piece {
 	}
 	mask := d.mask(pattern)
 	var out []piece
-	for i, cell := range d.cells {
+	for i, whole := range d.cells {
 		c := pt{d.at[i].X, d.at[i].Y}
-		for _, part := range d.divide(cell) {
+		for _, part := range d.divide(whole) {
 			var s integrals
 			for _, m := range mask(part) {
 				for _, a := range d.areas {
 					for _, r := range a {
-						s = s.add(m.sign, r.clipConvex(m.ring).about(c))
+						s = s.add(m.sign, r.clipAll(m.cell.inner).about(c))
 					}
 				}
 			}
@@ -168,20 +173,21 @@ func (d *deck) piece(i int, c pt, s integrals) piece {
 }
 
 // divide cuts a cell into pieces small enough for the surface to be plane in each.
-func (d *deck) divide(cell ring) []ring {
-	if len(cell) == 0 {
+func (d *deck) divide(c cell) []cell {
+	if len(c.ring) == 0 {
 		return nil
 	}
-	lo, hi := cell.box()
-	if d.plane(cell, lo, hi) {
-		return []ring{cell}
+	lo, hi := c.ring.box()
+	if d.plane(c.ring, lo, hi) {
+		return []cell{c}
 	}
-	var out []ring
+	var out []cell
 	us, vs := evenly(lo[0], hi[0], curvedPieces), evenly(lo[1], hi[1], curvedPieces)
 	for j := range curvedPieces {
 		for i := range curvedPieces {
-			if r := cell.clipConvex(ring{{us[i], vs[j]}, {us[i+1], vs[j]}, {us[i+1], vs[j+1]}, {us[i], vs[j+1]}}); r != nil {
-				out = append(out, r)
+			piece := c.cut(half{pt{-1, 0}, -us[i]}, half{pt{1, 0}, us[i+1]}, half{pt{0, -1}, -vs[j]}, half{pt{0, 1}, vs[j+1]})
+			if piece.ring != nil {
+				out = append(out, piece)
 			}
 		}
 	}
@@ -189,10 +195,10 @@ func (d *deck) divide(cell ring) []ring {
 }
 
 // plane reports whether the slope of the surface is the same at the corners of a cell, at its middle and around it.
-func (d *deck) plane(cell ring, lo, hi pt) bool {
+func (d *deck) plane(r ring, lo, hi pt) bool {
 	m := pt{(lo[0] + hi[0]) / 2, (lo[1] + hi[1]) / 2}
 	zx, zy := d.surface.Gradient(m[0]+d.origin.X, m[1]+d.origin.Y)
-	for _, p := range cell {
+	for _, p := range r {
 		for _, s := range [...]float64{0.4, 0.7, 1} {
 			x, y := m[0]+s*(p[0]-m[0])+d.origin.X, m[1]+s*(p[1]-m[1])+d.origin.Y
 			if gx, gy := d.surface.Gradient(x, y); math.Abs(gx-zx) > sameSlope || math.Abs(gy-zy) > sameSlope {

@@ -2,6 +2,7 @@ package ground
 
 import (
 	"fmt"
+	"math"
 	"strconv"
 	"strings"
 
@@ -199,11 +200,14 @@ func (b *builder) comboName(c combo, effects []effect) string {
 	return strings.Join(parts, " + ")
 }
 
-// number writes a factor without digits that are only rounding.
+// number writes a factor with at least one decimal and without digits that are only rounding.
 func number(f float64) string {
-	s := strconv.FormatFloat(f, 'f', 4, 64)
-	return strings.TrimSuffix(strings.TrimRight(s, "0"), ".")
+	whole, decimals, _ := strings.Cut(strconv.FormatFloat(f, 'f', 4, 64), ".")
+	return whole + "." + decimals[:1] + strings.TrimRight(decimals[1:], "0")
 }
+
+// product returns the product of two factors as one would write it: 0.9, not 0.8999999999999999.
+func product(a, b float64) float64 { return math.Round(a*b*1e9) / 1e9 }
 
 // addSideways adds, after each case without wind and with a net load downwards, four cases in which a share of the
 // vertical load of every node also acts sideways, towards the east, north, west and south of the local axes. The weight
@@ -225,7 +229,7 @@ func (b *builder) addSideways(cases []Case, combos []combo) []Case {
 		}
 		for _, s := range sideways {
 			v := Case{
-				Name:    fmt.Sprintf("%s, %s %% sideways %s", c.Name, number(100*share), s.name),
+				Name:    fmt.Sprintf("%s, %s %% sideways %s", c.Name, strconv.FormatFloat(math.Round(1e6*share)/1e4, 'f', -1, 64), s.name),
 				Gravity: c.Gravity,
 				Factors: append(c.Factors[:len(c.Factors):len(c.Factors)], Factor{"sideways " + s.name, share}),
 			}

@@ -8,12 +8,10 @@ import (
 
 const (
 	// spread is the least radius of gyration in plan, as a share of the deck spacing, of the nodes that are to take up a
-	// moment. Nodes in one line or in one place cannot; then nodes around them help. On a narrow roof it is at most
-	// narrow times the radius of the whole roof.
+	// moment: nodes in one line or in one place cannot. On a narrow roof it is at most narrow times the radius of the
+	// whole roof.
 	spread = 0.25
 	narrow = 0.5
-	// helping is the weight of a node that helps, as a share of its tributary area.
-	helping = 0.25
 	// flat is the share of the second moments below which nodes lie in one line.
 	flat = 1e-12
 	// balanced is the residual, as a share of the load (times its lever), that is rounding.
@@ -39,6 +37,7 @@ func (w wrench) sub(at, f []geom.Vec) wrench {
 
 // carry is a load on its way to the nodes of a deck.
 type carry struct {
+	parts  []part
 	force  []geom.Vec // on each node
 	weight []float64  // loaded area, or length, of each node
 	target wrench     // resultant of the load itself
@@ -46,81 +45,82 @@ type carry struct {
 	down   bool       // all parts press down
 }
 
+// part is a force at a place, with the area or length that it stands for.
+type part struct {
+	at, force geom.Vec
+	weight    float64
+}
+
 func (d *deck) newCarry() *carry {
 	return &carry{force: make([]geom.Vec, len(d.nodes)), weight: make([]float64, len(d.nodes)), down: true}
 }
 
-// put gives a part of the load at a place to one node, or a share of it.
-func (c *carry) put(node int, at, f geom.Vec, weight float64) {
-	c.force[node] = c.force[node].Add(f)
-	c.weight[node] += weight
-	c.target.add(at, f)
-	c.gross += f.Norm()
-	c.down = c.down && f.X == 0 && f.Y == 0 && f.Z <= 0
+// put gives a part of the load to nodes, by shares.
+func (c *carry) put(p part, nodes []int, share []float64) {
+	c.parts = append(c.parts, p)
+	c.share(p, nodes, share)
+	c.target.add(p.at, p.force)
+	c.gross += p.force.Norm()
+	c.down = c.down && p.force.X == 0 && p.force.Y == 0 && p.force.Z <= 0
+}
+
+func (c *carry) share(p part, nodes []int, share []float64) {
+	for k, n := range nodes {
+		c.force[n] = c.force[n].Add(p.force.Scale(share[k]))
+		c.weight[n] += p.weight * share[k]
+	}
 }
 
 // settle corrects the forces on the nodes so that force and moment of the load are conserved: first the horizontal part by
-// a rigid field in plan, then the vertical part by an affine field, both in proportion to the loaded area. A load in a
-// place too narrow for that is shared with nodes around it, and so is a downward load that would lift a node.
+// a rigid field in plan, then the vertical part by an affine field, both in proportion to the loaded area. If the loaded
+// nodes lie in a place too narrow to take up the moment, or if the correction would lift a node under a load that presses
+// down, every part of the load goes to the triangle of nodes around it instead, which needs next to no correction.
 func (c *carry) settle(d *deck) {
-	if c.within(d, c.force) {
+	if c.settled(d) {
 		return
 	}
-	given := c.force
-	for help := 0; ; help++ {
-		w := c.weight
-		last := help >= helpSteps
-		if help > 0 {
-			w = d.help(w, d.reach*(1+fitSlack)*math.Pow(2, float64(help-1)))
-		}
-		if !last && d.gyration(w) < d.needed {
-			continue
-		}
-		c.force = append([]geom.Vec(nil), given...)
-		for range refinements {
-			d.correct(c.force, w, c.target, c.gross)
-		}
-		if last || !c.down || !lifted(c.force, c.gross) {
+	if d.gyration(c.weight) >= d.needed {
+		given := append([]geom.Vec(nil), c.force...)
+		if c.correct(d); !c.lifts() {
 			return
 		}
+		c.force = given
+	}
+	clear(c.force)
+	clear(c.weight)
+	for _, p := range c.parts {
+		nodes, share := d.triangle(pt{p.at.X, p.at.Y})
+		c.share(p, nodes[:], share[:])
+	}
+	for n, w := range c.weight {
+		c.weight[n] = math.Abs(w) // beyond the outermost nodes a share may be negative
+	}
+	if !c.settled(d) {
+		c.correct(d)
 	}
 }
 
-const (
-	// helpSteps is how often the circle of helping nodes is doubled.
-	helpSteps = 5
-	// refinements is how often the correction is applied: the second time to the rounding of the first.
-	refinements = 2
-)
+// correct applies the two fields, the second time to the rounding of the first.
+func (c *carry) correct(d *deck) {
+	for range 2 {
+		d.correct(c.force, c.weight, c.target, c.gross)
+	}
+}
 
-// within reports whether forces on the nodes have the resultant of the load already.
-func (c *carry) within(d *deck, f []geom.Vec) bool {
-	r := c.target.sub(d.at, f)
+// settled reports whether the forces on the nodes have the resultant of the load.
+func (c *carry) settled(d *deck) bool {
+	r := c.target.sub(d.at, c.force)
 	return r.force.Norm() <= balanced*c.gross && r.moment.Norm() <= balanced*c.gross*d.reach
 }
 
-// lifted reports whether any force points up.
-func lifted(f []geom.Vec, gross float64) bool {
-	for _, v := range f {
-		if v.Z > balanced*gross {
+// lifts reports whether a load that presses down has come to lift a node.
+func (c *carry) lifts() bool {
+	for _, f := range c.force {
+		if c.down && f.Z > balanced*c.gross {
 			return true
 		}
 	}
 	return false
-}
-
-// help returns weights that also count the nodes within a radius of loaded ones.
-func (d *deck) help(w []float64, radius float64) []float64 {
-	out := append([]float64(nil), w...)
-	for i, p := range d.at {
-		for j, q := range d.at {
-			if w[j] > 0 && math.Hypot(p.X-q.X, p.Y-q.Y) <= radius {
-				out[i] += helping * d.plan[i]
-				break
-			}
-		}
-	}
-	return out
 }
 
 // second are the second moments of weights in plan about their centroid.

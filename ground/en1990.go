@@ -40,7 +40,7 @@ func (a Action) psi0() float64 {
 func (b *builder) en1990(sets [][]int, effects []effect, ab bool) []combo {
 	unfavourable := en1990Permanent
 	if ab {
-		unfavourable *= en1990Xi
+		unfavourable = product(en1990Xi, en1990Permanent)
 	}
 	var full, light []combo
 	for _, set := range sets {
@@ -65,7 +65,7 @@ func (b *builder) en1990Factors(set []int, lead int) []float64 {
 	for _, i := range set {
 		f[i] = en1990Variable
 		if i != lead {
-			f[i] *= b.spec.Actions[i].psi0()
+			f[i] = product(en1990Variable, b.spec.Actions[i].psi0())
 		}
 	}
 	return f

@@ -18,24 +18,24 @@ func (b *builder) placeFeet() {
 			places = append(places, alongLine(l, b.spec.FootSpacing)...)
 		}
 		places = append(places, z.Points...)
-		clear := 0
+		left := 0
 		for _, at := range places {
 			lifted := at
 			lifted.Z += footLift
 			if b.allowed(at) && b.allowed(lifted) {
 				b.foot(i, at)
-				clear++
+				left++
 			}
 		}
-		feet += clear
-		if n := len(places) - clear; n > 0 {
+		feet += left
+		if n := len(places) - left; n > 0 {
 			b.issues.Add(geom.Warning, z.Name, "", "%d of %d foot positions lie inside a keep-clear or outside the envelope and are left out",
 				n, len(places))
 		}
 	}
 	if feet == 0 && len(b.site.Walls) == 0 {
 		b.issues.Add(geom.Error, "", "", "there is no place to stand: no foot position is left and there is no wall. "+
-			"Add a footing zone outside the keep-clears, or make foot_spacing smaller")
+			"Add a footing zone outside the keep-clears, or make grid.foot_spacing_m smaller")
 	}
 }
 

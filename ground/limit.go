@@ -25,36 +25,68 @@ func (b *builder) supportRange(k int) (lo, hi float64) {
 	return lo, hi
 }
 
-// tooFine rejects spacings that would make so many nodes that even counting them takes long.
+// tooFine rejects spacings that would make so many nodes that even placing them takes long.
 func (b *builder) tooFine() {
 	s := b.spec
-	var plan, edge, height float64
+	var plan, edge float64
+	low, high := math.Inf(1), math.Inf(-1)
 	for i, r := range b.site.Roofs {
-		for _, reg := range r.Regions {
+		for j, reg := range r.Regions {
 			plan += geom.Area(reg.Polygon())
-			edge += b.plans[i].areas[0][0].length()
-			for _, v := range reg.Rings[0] {
-				height = math.Max(height, math.Abs(r.Surface.Height(v.X, v.Y)))
+			for k, ring := range reg.Rings {
+				edge += b.plans[i].areas[j][k].length()
+				for _, v := range ring {
+					high = math.Max(high, r.Surface.Height(v.X, v.Y))
+				}
 			}
 		}
 	}
-	b.limit("grid.deck_spacing_m", "roof nodes", s.DeckSpacing, plan/(s.DeckSpacing*s.DeckSpacing)+edge/s.DeckSpacing, 2)
-	b.limit("grid.inner_spacing_m", "inner nodes", s.InnerSpacing, plan/(s.InnerSpacing*s.InnerSpacing), 2)
 	var feet float64
 	for _, z := range b.site.Footings {
 		for _, reg := range z.Regions {
-			feet += geom.Area(reg.Polygon())
+			feet += geom.Area(reg.Polygon()) / (s.FootSpacing * s.FootSpacing)
+			low = math.Min(low, reg.Rings[0][0].Z)
+		}
+		for _, l := range z.Lines {
+			feet += pathLength(l) / s.FootSpacing
+			low = math.Min(low, l[0].Z)
 		}
 	}
-	b.limit("grid.foot_spacing_m", "foot positions", s.FootSpacing, feet/(s.FootSpacing*s.FootSpacing), 2)
+	var walls float64
+	for _, w := range b.site.Walls {
+		up := math.Max(1, (w.Top-w.Points[0].Z)/s.WallSpacing)
+		walls += pathLength(w.Points) / s.WallSpacing * up
+	}
+	b.limit("grid.deck_spacing_m", "roof nodes", s.DeckSpacing, plan/(s.DeckSpacing*s.DeckSpacing)+edge/s.DeckSpacing)
+	levels := math.Max(1, (high-math.Min(low, high))/s.InnerRise)
+	path, spacing := b.innerPath()
+	b.limit(path, "inner nodes", spacing, plan/(s.InnerSpacing*s.InnerSpacing)*levels)
+	b.limit("grid.foot_spacing_m", "foot positions", s.FootSpacing, feet)
+	b.limit("grid.wall_spacing_m", "wall nodes", s.WallSpacing, walls)
 }
 
-// limit reports a number of nodes, which grows with 1/spacing to a power, that is above MaxNodes.
-func (b *builder) limit(path, what string, spacing, n, power float64) {
+// innerPath returns which of the two spacings of inner nodes is to blame for their number.
+func (b *builder) innerPath() (path string, spacing float64) {
+	if b.spec.InnerRise < b.spec.InnerSpacing/2 {
+		return "grid.inner_rise_m", b.spec.InnerRise
+	}
+	return "grid.inner_spacing_m", b.spec.InnerSpacing
+}
+
+func pathLength(vs []geom.Vec) float64 {
+	var l float64
+	for i := 1; i < len(vs); i++ {
+		l += vs[i].Sub(vs[i-1]).Norm()
+	}
+	return l
+}
+
+// limit reports a number of nodes that is above MaxNodes, with a spacing that would fit.
+func (b *builder) limit(path, what string, spacing, n float64) {
 	if n <= MaxNodes {
 		return
 	}
-	fits := math.Ceil(10*spacing*math.Pow(n/MaxNodes, 1/power)) / 10
+	fits := fitting(path, spacing, n/MaxNodes)
 	b.issues.Add(geom.Error, "", path, "%v m makes about %.0f %s; at most %d nodes are allowed. %v m would fit", spacing, n, what, MaxNodes, fits)
 }
 
@@ -70,10 +102,21 @@ func (b *builder) tooMany(n int) {
 			role = r
 		}
 	}
-	path := [...]string{"grid.inner_spacing_m", "grid.deck_spacing_m", "grid.foot_spacing_m", "grid.wall_spacing_m"}[role]
-	spacing := [...]float64{b.spec.InnerSpacing, b.spec.DeckSpacing, b.spec.FootSpacing, b.spec.WallSpacing}[role]
+	path := [...]string{"", "grid.deck_spacing_m", "grid.foot_spacing_m", "grid.wall_spacing_m"}[role]
+	spacing := [...]float64{0, b.spec.DeckSpacing, b.spec.FootSpacing, b.spec.WallSpacing}[role]
+	if role == Inner {
+		path, spacing = b.innerPath()
+	}
 	room := math.Max(MaxNodes-(float64(n)-count[role]), MaxNodes/10)
-	fits := math.Ceil(10*spacing*math.Sqrt(count[role]/room)) / 10
 	b.issues.Add(geom.Error, "", path, "the ground structure has %d nodes, %.0f of them %s nodes; at most %d are allowed. %v m would fit",
-		n, count[role], role, MaxNodes, fits)
+		n, count[role], role, MaxNodes, fitting(path, spacing, count[role]/room))
+}
+
+// fitting returns the spacing, to the next decimetre, that makes so many times fewer nodes. Their number falls with the
+// rise, and with the square of the other spacings.
+func fitting(path string, spacing, times float64) float64 {
+	if path != "grid.inner_rise_m" {
+		times = math.Sqrt(times)
+	}
+	return math.Ceil(10*spacing*times) / 10
 }

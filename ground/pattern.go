@@ -6,66 +6,68 @@ import (
 	"boughwork/geom"
 )
 
-// signed is a convex anticlockwise ring that counts with a sign.
+// signed is a cell that counts with a sign.
 type signed struct {
 	sign float64
-	ring ring
+	cell cell
 }
 
-// mask returns a function that cuts a convex ring down to what a pattern keeps. A polygon of any shape is the sum of the
-// signed triangles from its first corner to each edge, so that areas and moments come out right though it may be concave.
-func (d *deck) mask(p Pattern) func(ring) []signed {
-	half := func(r ring) ring { return r }
+// mask returns a function that cuts a cell down to what a pattern keeps. A polygon of any shape is the sum of the signed
+// triangles from its first corner to each edge, so that areas and moments come out right though it may be concave.
+func (d *deck) mask(p Pattern) func(cell) []signed {
+	var side []half
 	if p.Half != nil {
-		n, limit := d.halfPlane(*p.Half)
-		half = func(r ring) ring { return r.clip(n, limit) }
+		side = append(side, d.halfPlane(*p.Half))
 	}
-	if len(p.Polygon) == 0 {
-		return func(r ring) []signed {
-			if r = half(r); r == nil {
-				return nil
+	fan := []struct {
+		sign  float64
+		inner []half
+	}{{1, nil}}
+	if len(p.Polygon) > 0 {
+		fan = fan[:0]
+		o := d.local(p.Polygon)
+		whole := o.about(o[0]).area
+		for i := 1; i+1 < len(o); i++ {
+			t, s := ring{o[0], o[i], o[i+1]}, 1.0
+			a := t.about(o[0]).area
+			if a == 0 {
+				continue
 			}
-			return []signed{{1, r}}
+			if a < 0 {
+				t = ring{o[0], o[i+1], o[i]}
+			}
+			if (a < 0) != (whole < 0) {
+				s = -1
+			}
+			fan = append(fan, struct {
+				sign  float64
+				inner []half
+			}{s, t.halves()})
 		}
 	}
-	var fan []signed
-	o := d.local(p.Polygon)
-	total := o.about(o[0]).area
-	for i := 1; i+1 < len(o); i++ {
-		t := ring{o[0], o[i], o[i+1]}
-		s := 1.0
-		if a := t.about(o[0]).area; a < 0 {
-			slices.Reverse(t)
-			s = -1
-		} else if a == 0 {
-			continue
-		}
-		if total < 0 {
-			s = -s
-		}
-		fan = append(fan, signed{s, t})
-	}
-	return func(r ring) []signed {
-		r = half(r)
+	return func(c cell) []signed {
 		var out []signed
+		if c = c.cut(side...); c.ring == nil {
+			return nil
+		}
 		for _, t := range fan {
-			if c := r.clipConvex(t.ring); c != nil {
-				out = append(out, signed{t.sign, c})
+			if k := c.cut(t.inner...); k.ring != nil {
+				out = append(out, signed{t.sign, k})
 			}
 		}
 		return out
 	}
 }
 
-// halfPlane returns the half-plane n . p <= limit of a pattern.
-func (d *deck) halfPlane(h HalfPlane) (n pt, limit float64) {
+// halfPlane returns the half-plane of a pattern.
+func (d *deck) halfPlane(h HalfPlane) half {
 	x, y := geom.Towards(h.Bearing)
-	n = pt{-x, -y}
+	n := pt{-x, -y}
 	t := d.centroid()
 	if h.Through != nil {
 		t = pt{h.Through[0] - d.origin.X, h.Through[1] - d.origin.Y}
 	}
-	return n, n[0]*t[0] + n[1]*t[1]
+	return half{n, n[0]*t[0] + n[1]*t[1]}
 }
 
 // centroid returns the centre of area of the roof's plan.
@@ -110,8 +112,8 @@ func (d *deck) stretches(p Pattern, a, b pt) []stretch {
 		out = kept
 	}
 	if p.Half != nil {
-		n, limit := d.halfPlane(*p.Half)
-		side := func(q pt) float64 { return n[0]*q[0] + n[1]*q[1] - limit }
+		h := d.halfPlane(*p.Half)
+		side := func(q pt) float64 { return h.n[0]*q[0] + h.n[1]*q[1] - h.d }
 		cut(crossing(side(a), side(b)), func(q pt) bool { return side(q) <= 0 })
 	}
 	if len(p.Polygon) > 0 {

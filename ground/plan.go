@@ -31,13 +31,13 @@ func (r ring) about(o pt) integrals {
 	return s
 }
 
-// clip returns the part of r where n . p <= d (Sutherland and Hodgman 1974). A ring that is not convex may come back
+// clip returns the part of r in a half-plane (Sutherland and Hodgman 1974). A ring that is not convex may come back
 // with edges that run along the line to and fro: its area and moments are right all the same.
-func (r ring) clip(n pt, d float64) ring {
+func (r ring) clip(h half) ring {
 	out := make(ring, 0, len(r)+2)
 	for i, p := range r {
 		q := r[(i+1)%len(r)]
-		a, b := n[0]*p[0]+n[1]*p[1]-d, n[0]*q[0]+n[1]*q[1]-d
+		a, b := h.n[0]*p[0]+h.n[1]*p[1]-h.d, h.n[0]*q[0]+h.n[1]*q[1]-h.d
 		if a <= 0 {
 			out = append(out, p)
 		}
@@ -52,22 +52,53 @@ func (r ring) clip(n pt, d float64) ring {
 	return out
 }
 
-// clipConvex returns the part of r inside the convex anticlockwise ring c.
-func (r ring) clipConvex(c ring) ring {
-	if len(c) < 3 {
-		return nil
-	}
-	for i, p := range c {
-		q := c[(i+1)%len(c)]
-		n := pt{q[1] - p[1], p[0] - q[0]}
-		if n == (pt{}) {
-			continue
-		}
-		if r = r.clip(n, n[0]*p[0]+n[1]*p[1]); r == nil {
+// half is the half-plane n . p <= d.
+type half struct {
+	n pt
+	d float64
+}
+
+// clipAll returns the part of r inside all half-planes.
+func (r ring) clipAll(hs []half) ring {
+	for _, h := range hs {
+		if r = r.clip(h); r == nil {
 			return nil
 		}
 	}
 	return r
+}
+
+// halves returns the half-planes to the left of the edges of a convex anticlockwise ring.
+func (r ring) halves() []half {
+	var out []half
+	for i, p := range r {
+		q := r[(i+1)%len(r)]
+		n := pt{q[1] - p[1], p[0] - q[0]}
+		out = append(out, half{n, n[0]*p[0] + n[1]*p[1]})
+	}
+	return out
+}
+
+// cell is a convex part of the plan: its ring, and the half-planes that it is the intersection of. Rings are clipped by
+// these and never by the edges of the cell, some of which may be so short that rounding has turned them.
+type cell struct {
+	ring  ring
+	inner []half
+}
+
+// cut returns the part of the cell in a half-plane.
+func (c cell) cut(hs ...half) cell {
+	for _, h := range hs {
+		crossed := false
+		for _, p := range c.ring {
+			crossed = crossed || h.n[0]*p[0]+h.n[1]*p[1] > h.d
+		}
+		if crossed {
+			c.ring = c.ring.clip(h)
+			c.inner = append(c.inner[:len(c.inner):len(c.inner)], h)
+		}
+	}
+	return c
 }
 
 // contains reports whether p is inside r (even-odd rule); on the outline either answer is possible.

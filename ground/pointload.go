@@ -29,33 +29,27 @@ func (d *deck) covers(at [2]float64) bool {
 }
 
 // loadPoint puts a force at a place of the roof on the corners of the smallest triangle of nodes around it, by its
-// barycentric coordinates; what the height of the roof above the triangle adds to the moment follows by carry.settle.
+// barycentric coordinates; what the height of the roof above the triangle adds to the moment they take up as well.
 func (d *deck) loadPoint(l PointLoad, out []geom.Vec) {
 	p := pt{l.At[0] - d.origin.X, l.At[1] - d.origin.Y}
 	at := geom.Vec{X: p[0], Y: p[1], Z: d.surface.Height(l.At[0], l.At[1]) - d.origin.Z}
 	c := d.newCarry()
 	nodes, share := d.triangle(p)
-	for k, n := range nodes {
-		c.force[n] = c.force[n].Add(l.Force.Scale(share[k]))
+	c.put(part{at, l.Force, 1}, nodes[:], share[:])
+	for _, n := range nodes {
 		c.weight[n] = 1
 	}
-	c.target.add(at, l.Force)
-	c.gross = l.Force.Norm()
-	c.down = false // the three nodes decide; an overhang lifts the far one
-	c.settle(d)
+	if !c.settled(d) {
+		c.correct(d)
+	}
 	c.addTo(out)
 }
 
 // triangle returns the three nodes around a place of the plan and their shares. Beyond the outermost nodes it is the
 // triangle that the place is least outside of.
 func (d *deck) triangle(p pt) (nodes [3]int, share [3]float64) {
-	near := make([]int, len(d.at))
-	for i := range near {
-		near[i] = i
-	}
+	near := d.nearestFew(p, pointNear)
 	far := func(i int) float64 { return distance(p, pt{d.at[i].X, d.at[i].Y}) }
-	slices.SortStableFunc(near, func(i, j int) int { return cmp.Compare(far(i), far(j)) })
-	near = near[:min(len(near), pointNear)]
 	bestOut, bestSize := math.Inf(1), math.Inf(1)
 	for a := range near {
 		for b := a + 1; b < len(near); b++ {
@@ -77,6 +71,23 @@ func (d *deck) triangle(p pt) (nodes [3]int, share [3]float64) {
 		return [3]int{near[0], near[0], near[0]}, [3]float64{1, 0, 0}
 	}
 	return nodes, share
+}
+
+// nearestFew returns the n nodes nearest in plan, or all if there are fewer, the nearest first.
+func (d *deck) nearestFew(p pt, n int) []int {
+	far := func(i int) float64 { return distance(p, pt{d.at[i].X, d.at[i].Y}) }
+	var near []int
+	for k := 0; ; k++ {
+		near = append(near, d.index.around(p, k)...)
+		// All nodes within k cells are known by now. If the n nearest of them are that near, they are the ones.
+		if len(near) < min(n, len(d.at)) {
+			continue
+		}
+		slices.SortStableFunc(near, func(i, j int) int { return cmp.Or(cmp.Compare(far(i), far(j)), cmp.Compare(i, j)) })
+		if len(near) == len(d.at) || far(near[n-1]) <= float64(k)*d.index.size {
+			return near[:min(n, len(near))]
+		}
+	}
 }
 
 // barycentric returns the barycentric coordinates of p in a triangle of nodes, and twice its signed area.

@@ -24,7 +24,7 @@ func (d *deck) loadArea(l AreaLoad, out []geom.Vec) bool {
 		case Towards:
 			f = geom.Vec{X: tx, Y: ty}.Scale(l.Pressure * p.area)
 		}
-		c.put(p.node, p.at, f, p.area)
+		c.put(part{p.at, f, p.area}, []int{p.node}, []float64{1})
 	}
 	c.settle(d)
 	c.addTo(out)
@@ -48,9 +48,7 @@ func (d *deck) loadEdges(l EdgeLoad, out []geom.Vec) bool {
 		for j, r := range a {
 			d.loadRing(l, r, d.rings[i][j], func(p edgePart) {
 				found = true
-				for k := range p.node {
-					c.put(p.node[k], p.at, p.force.Scale(p.share[k]), p.length*p.share[k])
-				}
+				c.put(p.part, p.node[:], p.share[:])
 			})
 		}
 	}
@@ -61,11 +59,9 @@ func (d *deck) loadEdges(l EdgeLoad, out []geom.Vec) bool {
 
 // edgePart is a short straight part of an edge with its load and the two nodes (indices into deck.nodes) that share it.
 type edgePart struct {
-	at     geom.Vec
-	force  geom.Vec
-	length float64
-	node   [2]int
-	share  [2]float64
+	part
+	node  [2]int
+	share [2]float64
 }
 
 // loadRing cuts a ring at its vertices, its nodes and the limits of the pattern and calls yield for every part that
@@ -126,10 +122,10 @@ const edgeParts = 4
 // edgePart returns the loaded part s of the edge a b with the two nodes beside it.
 func (d *deck) edgePart(s stretch, a, b pt, start, length float64, q geom.Vec, stops []ringStop, r ring) edgePart {
 	m := (s.from + s.to) / 2
-	p := edgePart{length: (s.to - s.from) * length}
+	p := edgePart{part: part{weight: (s.to - s.from) * length}}
 	p.at = geom.Vec{X: a[0] + m*(b[0]-a[0]), Y: a[1] + m*(b[1]-a[1])}
 	p.at.Z = d.surface.Height(p.at.X+d.origin.X, p.at.Y+d.origin.Y) - d.origin.Z
-	p.force = q.Scale(p.length)
+	p.force = q.Scale(p.weight)
 	if len(stops) < 2 {
 		n := d.nearest(pt{p.at.X, p.at.Y})
 		p.node, p.share = [2]int{n, n}, [2]float64{1, 0}

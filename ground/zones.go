@@ -15,7 +15,7 @@ func (b *builder) validateZones() {
 	names := mapped(site.Footings, func(z geom.Zone) string { return z.Name })
 	for _, name := range slices.Sorted(maps.Keys(b.spec.Limits)) {
 		if !slices.Contains(names, name) {
-			b.issues.Add(geom.Error, name, "footings."+name, "the site has no footing zone of this name%s", suggest(name, names))
+			b.issues.Add(geom.Error, name, "footings", "the site has no footing zone of this name%s", suggest(name, names))
 		}
 		for i := range site.Footings {
 			if site.Footings[i].Name == name {
@@ -30,14 +30,14 @@ func (b *builder) validateZones() {
 			value *float64
 		}{{"vertical_kn", l.Vertical}, {"uplift_kn", l.Uplift}, {"sideways_kn", l.Sideways}, {"cost_m3_per_kn", &l.Cost}} {
 			if v.value != nil && !(*v.value >= 0) {
-				b.issues.Add(geom.Error, z.Name, "footings."+z.Name+"."+v.key, "must not be below 0")
+				b.issues.Add(geom.Error, z.Name, "footings", "%s must not be below 0", v.key)
 			}
 		}
 	}
 }
 
-// suggest returns "; did you mean ...?" with the name that takes the fewest changes of letters (Levenshtein 1966), or a
-// list of the names if none is near.
+// suggest returns "; did you mean ...?" with the name that takes the fewest changes of letters (Levenshtein 1966), or
+// nothing if none is near.
 func suggest(name string, names []string) string {
 	best, at := len(name)/2+2, ""
 	for _, n := range names {
