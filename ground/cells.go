@@ -23,6 +23,7 @@ type deck struct {
 	nodes   []int          // numbers in the structure
 	at      []geom.Vec     // their places from origin
 	cells   []cell         // Voronoi cells, clipped to the box round the roof
+	index   *index         // of at
 	plan    []float64      // tributary area of each node, m2
 	reach   float64        // deck spacing, m
 	needed  float64        // least radius of gyration of the nodes that take up a moment, m
