@@ -7,8 +7,8 @@ import (
 )
 
 // Build makes the ground structure of a study from its site and brief: nodes and supports, tributary loads, load cases.
-// The site must be as geom reads it (rings open, outlines anticlockwise, holes clockwise). Issues of severity Error come
-// with a nil structure; warnings come with a structure. The same input gives the same structure, bit for bit.
+// The rings of the site are open, without crossings, as geom reads them; site and spec are not changed. Issues of severity
+// Error come with a nil structure, warnings with a structure. The same input gives the same structure, bit for bit.
 func Build(site *geom.Site, spec Spec) (*Structure, geom.Issues) {
 	b := &builder{site: site, spec: spec}
 	if b.validate(); b.failed() {

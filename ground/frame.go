@@ -2,6 +2,7 @@ package ground
 
 import (
 	"math"
+	"slices"
 
 	"boughwork/geom"
 )
@@ -34,11 +35,15 @@ func (g gridFrame) ring(vs []geom.Vec) ring {
 	return r
 }
 
-// area returns the plan of a region in grid coordinates.
+// area returns the plan of a region in grid coordinates: the outline anticlockwise, the holes clockwise, whatever way they
+// were given.
 func (g gridFrame) area(r geom.Region) area {
 	a := make(area, len(r.Rings))
 	for i, vs := range r.Rings {
 		a[i] = g.ring(vs)
+		if len(vs) > 0 && (a[i].about(a[i][0]).area < 0) != (i > 0) {
+			slices.Reverse(a[i])
+		}
 	}
 	return a
 }

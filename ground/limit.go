@@ -45,16 +45,16 @@ func (b *builder) tooFine() {
 	for _, z := range b.site.Footings {
 		for _, reg := range z.Regions {
 			feet += geom.Area(reg.Polygon()) / (s.FootSpacing * s.FootSpacing)
-			low = math.Min(low, reg.Rings[0][0].Z)
+			low = math.Min(low, lowest(reg.Rings...))
 		}
 		for _, l := range z.Lines {
 			feet += pathLength(l) / s.FootSpacing
-			low = math.Min(low, l[0].Z)
+			low = math.Min(low, lowest(l))
 		}
 	}
 	var walls float64
 	for _, w := range b.site.Walls {
-		up := math.Max(1, (w.Top-w.Points[0].Z)/s.WallSpacing)
+		up := math.Max(1, (w.Top-lowest(w.Points))/s.WallSpacing)
 		walls += pathLength(w.Points) / s.WallSpacing * up
 	}
 	b.limit("grid.deck_spacing_m", "roof nodes", s.DeckSpacing, plan/(s.DeckSpacing*s.DeckSpacing)+edge/s.DeckSpacing)
@@ -73,6 +73,18 @@ func (b *builder) innerPath() (path string, spacing float64) {
 	return "grid.inner_spacing_m", b.spec.InnerSpacing
 }
 
+// lowest returns the lowest height of some places; +Inf if there are none.
+func lowest(lines ...[]geom.Vec) float64 {
+	z := math.Inf(1)
+	for _, l := range lines {
+		for _, v := range l {
+			z = math.Min(z, v.Z)
+		}
+	}
+	return z
+}
+
+// pathLength returns the length of a polyline.
 func pathLength(vs []geom.Vec) float64 {
 	var l float64
 	for i := 1; i < len(vs); i++ {

@@ -3,6 +3,7 @@ package ground
 import (
 	"math"
 	"reflect"
+	"slices"
 	"strings"
 	"testing"
 
@@ -323,5 +324,49 @@ func TestBuildRepeats(t *testing.T) {
 	}
 	if !reflect.DeepEqual(site, before) {
 		t.Error("Build changed the site")
+	}
+}
+
+// A turned roof far from the origin, as in a national grid, has the rows of the roof at the origin; a bearing given by the
+// user does the same as the longest edge.
+func TestGridFollowsTheRoof(t *testing.T) {
+	plain := mustBuild(t, hall(), plainSpec())
+	for _, deg := range []float64{0, 17, 45, 90, 133, 180, 300} {
+		turned := func(x0, y0, x1, y1 float64) [][2]float64 { return rotated(deg, 4e5, 5.8e6, box(x0, y0, x1, y1)) }
+		site := &geom.Site{
+			Roofs:    []geom.Roof{roofOf(level(7), turned(0, 0, 40, 20))},
+			Footings: []geom.Zone{pad("west pad", 0, turned(8, 8, 12, 12)), pad("east pad", 0, turned(28, 8, 32, 12))},
+		}
+		bearing := 90 - deg
+		for _, b := range []*float64{nil, &bearing} {
+			spec := plainSpec()
+			spec.GridBearing = b
+			s := mustBuild(t, site, spec)
+			if len(s.Nodes) != len(plain.Nodes) {
+				t.Errorf("turned by %v: %d nodes, want %d", deg, len(s.Nodes), len(plain.Nodes))
+				continue
+			}
+			for _, n := range plain.Nodes {
+				want := rotated(deg, 4e5, 5.8e6, [][2]float64{{n.At.X, n.At.Y}})[0]
+				found := slices.ContainsFunc(s.Nodes, func(o Node) bool {
+					return o.Role == n.Role && o.At.Sub(geom.Vec{X: want[0], Y: want[1], Z: n.At.Z}).Norm() < 1e-6
+				})
+				if !found {
+					t.Errorf("turned by %v: no %s node at the turned %v", deg, n.Role, n.At)
+				}
+			}
+		}
+	}
+}
+
+// Rings drawn the other way round make the same structure but for its order.
+func TestDirectionOfRingsDoesNotMatter(t *testing.T) {
+	right := mustBuild(t, onePost(shapes["hole"], 1, 1), plainSpec())
+	r := roofOf(level(7), reversed(box(0, 0, 40, 20)), reversed(box(15, 5, 23, 13)))
+	wrong := mustBuild(t, onePost(r, 1, 1), plainSpec())
+	f, _ := right.Resultant(0)
+	g, _ := wrong.Resultant(0)
+	if len(right.Nodes) != len(wrong.Nodes) || f.Sub(g).Norm() > 1e-6 || math.Abs(f.Z+1.35*500*(800-64)) > 1e-6 {
+		t.Errorf("%d and %d nodes, load %v and %v", len(right.Nodes), len(wrong.Nodes), f, g)
 	}
 }

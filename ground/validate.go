@@ -79,6 +79,9 @@ func (b *builder) validateAction(path string, i int, a Action) {
 			break
 		}
 	}
+	if a.Kind == Permanent && a.Group != "" {
+		b.issues.Add(geom.Warning, a.Name, path+".group", "permanent actions always act; the group is ignored")
+	}
 	if a.Psi0 != nil && !(*a.Psi0 >= 0 && *a.Psi0 <= 1) {
 		bad(path+".psi0", "is %v; a combination factor lies between 0 and 1", *a.Psi0)
 	}
