@@ -5,6 +5,7 @@ import (
 	"math"
 	"strings"
 
+	"boughwork/export"
 	"boughwork/geom"
 	"boughwork/lp"
 )
@@ -21,6 +22,9 @@ func (g *growth) summarise() {
 	row("status", "%s", statusText(rec.Status))
 	if len(rec.Bars) > 0 {
 		g.summariseLayout(row)
+	}
+	if len(rec.Bars) == 0 && rec.Collapse == nil {
+		row("layout", "none that carries all cases was found so far")
 	}
 	if rec.Collapse != nil {
 		g.summariseCollapse(row)
@@ -59,43 +63,42 @@ func statusText(status string) string {
 	case lp.IterationLimit.String():
 		return "iteration limit: stopped early; raise solve.rounds, or accept a larger solve.gap"
 	case lp.Cancelled.String():
-		return "cancelled: stopped early; this is the best layout so far"
+		return "cancelled: stopped early, with the best layout so far"
 	case lp.Trouble.String():
-		return "numerical trouble: stopped early; this is the best layout so far. Try a larger solve.gap, or another grid"
+		return "numerical trouble: stopped early, with the best layout so far. Try a larger solve.gap, or another grid"
 	}
 	return status
 }
 
 func (g *growth) summariseLayout(row func(name, format string, args ...any)) {
 	rec := g.out.Record
-	c := rec.Certificate
-	joints, kept, governs := map[int]bool{}, 0, 0
-	for _, bar := range rec.Bars {
-		joints[bar.Nodes[0]], joints[bar.Nodes[1]] = true, true
-		if bar.Kept {
-			kept++
+	s := export.Summarise(rec)
+	row("volume", "%.5g m3", s.VolumeM3)
+	if s.ObjectiveM3 != s.VolumeM3 {
+		row("objective", "%.5g m3: the volume with the cost of joints, roof bars and feet, which was made least", s.ObjectiveM3)
+	}
+	row("bound", "%.5g m3: no layout on this ground structure has a smaller objective", s.BoundM3)
+	row("gap", "%.3g %%", 100*s.Gap)
+	row("mass", "%s of %s", kilograms(s.MassKg), rec.Material.Name)
+	bars := fmt.Sprintf("%d, %.4g m in all, chosen from %d candidates", s.Bars, s.LengthM, rec.Candidates.Count)
+	if s.Kept > 0 {
+		bars += fmt.Sprintf("; %d of them kept, at no cost", s.Kept)
+	}
+	row("bars", "%s", bars)
+	row("joints", "%d, of which %d feet", s.Joints, s.Feet)
+	row("cases", "%d, of which %d govern", s.Cases, s.Governing)
+	for _, e := range []struct {
+		name string
+		at   export.Extreme
+	}{
+		{"largest reaction", s.LargestReaction},
+		{"largest uplift", s.LargestUplift},
+		{"most tension", s.LargestTension},
+		{"most compression", s.LargestPressure},
+	} {
+		if e.at.Mark != "" {
+			row(e.name, "%.4g kN at %s in case %q", e.at.KN, e.at.Mark, e.at.Case)
 		}
-	}
-	for _, k := range rec.Cases {
-		if k.Governs {
-			governs++
-		}
-	}
-	row("volume", "%.5g m3", c.VolumeM3)
-	if c.ObjectiveM3 != c.VolumeM3 {
-		row("objective", "%.5g m3, with the cost of joints, roof bars and feet", c.ObjectiveM3)
-	}
-	row("bound", "%.5g m3: no layout on this ground structure can have a lower objective", c.BoundM3)
-	row("gap", "%.3g %%", 100*c.Gap)
-	row("mass", "%s of %s", kilograms(c.VolumeM3*rec.Material.DensityKgM3), rec.Material.Name)
-	bars := fmt.Sprintf("%d, with %s", len(rec.Bars), count(len(joints), "joint"))
-	if kept > 0 {
-		bars += fmt.Sprintf("; %d of them kept", kept)
-	}
-	row("bars", "%s; chosen from %d candidates", bars, rec.Candidates.Count)
-	row("cases", "%d, of which %d govern", len(rec.Cases), governs)
-	if r, ok := g.largestReaction(); ok {
-		row("largest reaction", "%s", r)
 	}
 }
 
