@@ -14,18 +14,13 @@ var vecNorth = geom.Vec{Y: 1}
 func (d *drawing) drawAxonometric() {
 	v := d.axo
 	d.axonometricGround(v)
-	if d.m.rec.Collapse != nil {
-		d.collapseIn(v)
-	}
 	thin := d.style
 	thin.widest *= axonometricWidth(d.place)
 	thin.drawBars(d.c, d.m, v)
-	d.c.openClipped(v.window.grown(d.paper.heavy), `stroke-linejoin="round"`)
-	for _, r := range d.m.roofs {
-		d.skin(v, r, 0.2)
-	}
-	d.c.close()
-	d.viewTitle(v, "Axonometric view", fmt.Sprintf("from the %s, %s along the front and up, %s in depth", d.side(-0.5, -1), ratio(d.place.axoScale), ratio(2*d.place.axoScale)), titleLine)
+	d.skins(v, 0.2)
+	d.collapseIn(v)
+	d.viewTitle(v, d.place.axo, "Axonometric view", fmt.Sprintf("from the %s, %s along the front and up, %s in depth",
+		d.side(-0.5, -1), ratio(d.place.axoScale), ratio(2*d.place.axoScale)), titleLine)
 }
 
 // axonometricWidth reduces the widths of bars where the view is smaller than the plan, though less than in proportion.

@@ -8,18 +8,17 @@ import (
 )
 
 // drawElevation draws what is seen from one side.
-func (d *drawing) drawElevation(v view, name, side string) {
+func (d *drawing) drawElevation(v view, cell box, words string) {
 	d.elevationSite(v)
-	if d.m.rec.Collapse != nil {
-		d.collapseIn(v)
-	}
 	d.style.drawBars(d.c, d.m, v)
+	d.skins(v, 0.2)
+	d.collapseIn(v)
 	d.standing(v)
 	d.levels(v)
-	d.viewTitle(v, name, "from the "+side+", "+ratio(d.place.scale), titleLine)
+	d.viewTitle(v, cell, "Elevation", words+", "+ratio(d.place.scale), titleLine)
 }
 
-// elevationSite draws ground, zones, keep-clears, walls and the skin of the roof.
+// elevationSite draws ground, zones, keep-clears and walls.
 func (d *drawing) elevationSite(v view) {
 	p := d.paper
 	d.c.openClipped(v.window, `stroke-linejoin="round"`)
@@ -37,8 +36,14 @@ func (d *drawing) elevationSite(v view) {
 			d.c.path([][]pt{v.all(ring)}, s.closed, stroke(greyColour, p.medium))
 		}
 	}
+	d.c.close()
+}
+
+// skins draws the roofs as a veil over what is behind and under them.
+func (d *drawing) skins(v view, opacity float64) {
+	d.c.openClipped(v.window.grown(d.paper.heavy), `stroke-linejoin="round"`)
 	for _, r := range d.m.roofs {
-		d.skin(v, r, 0.22)
+		d.skin(v, r, opacity)
 	}
 	d.c.close()
 }

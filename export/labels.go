@@ -12,17 +12,45 @@ func (c *canvas) free(b box) bool {
 	return true
 }
 
-// label writes a text beside a place where it meets no other text, no obstacle and no edge of the window, with a leader if it had
-// to go far. It tries near places first, above before below. It reports whether there was room.
-func (c *canvas) label(p pt, s string, w writing, window box, obstacles []box, hair float64) bool {
+// surroundings are what a label takes heed of: it must stay in the window and off the obstacles, and should cover few lines.
+type surroundings struct {
+	window    box
+	obstacles []box
+	lines     [][2]pt
+}
+
+// covered is how many lines a box covers.
+func (s surroundings) covered(b box) (n int) {
+	for _, l := range s.lines {
+		if crossesBox(l[0], l[1], b) {
+			n++
+		}
+	}
+	return n
+}
+
+// allowed reports whether a text may have a box.
+func (s surroundings) allowed(c *canvas, b box) bool {
+	return s.window.contains(b) && c.free(b) && !meetsAny(b, s.obstacles)
+}
+
+// farther is what one step away from its place costs a label, in lines that it would cover otherwise.
+const farther = 0.7
+
+// label writes a text beside a place where it meets no other text, no obstacle and no edge of the window: where it covers few lines and
+// is near, above rather than below. It has a leader if it had to go far. It reports whether there was room.
+func (c *canvas) label(p pt, s string, w writing, around surroundings, hair float64) bool {
 	const turns, rings = 12, 7
-	clear := w.size * 0.18
+	best, bestAt, bestBox, bestAnchor, far := math.Inf(1), pt{}, box{}, "", false
 	for ring := range rings {
+		if float64(ring)*farther >= best {
+			break
+		}
 		r := w.size * (0.9 + 0.95*float64(ring))
 		for turn := range turns {
 			// Upwards to the right first, then by turns to both sides.
 			angle := math.Pi/3 + float64((turn+1)/2)*2*math.Pi/turns*float64(1-2*(turn%2))
-			q := pt{p.x + r*math.Cos(angle), p.y - r*math.Sin(angle)}
+			q := pt{p.x + r*math.Cos(angle), p.y - r*math.Sin(angle) + 0.3*w.size}
 			w.anchor = "start"
 			switch {
 			case math.Abs(math.Cos(angle)) < 0.2:
@@ -30,19 +58,41 @@ func (c *canvas) label(p pt, s string, w writing, window box, obstacles []box, h
 			case math.Cos(angle) < 0:
 				w.anchor = "end"
 			}
-			q.y += w.size * 0.3
-			b := textBox(q, s, w).grown(clear)
-			if !window.contains(b) || !c.free(b) || meetsAny(b, obstacles) {
+			b := textBox(q, s, w).grown(0.18 * w.size)
+			if !around.allowed(c, b) {
 				continue
 			}
-			if ring > 1 {
-				c.line(p, nearestOf(b, p), stroke(inkColour, hair))
+			if cost := float64(ring)*farther + float64(around.covered(b)); cost < best {
+				best, bestAt, bestBox, bestAnchor, far = cost, q, b, w.anchor, ring > 1
 			}
-			c.text(q, s, w)
-			return true
 		}
 	}
-	return false
+	if math.IsInf(best, 1) {
+		return false
+	}
+	if far {
+		c.line(p, nearestOf(bestBox, p), stroke(inkColour, hair))
+	}
+	w.anchor = bestAnchor
+	c.text(bestAt, s, w)
+	return true
+}
+
+// crossesBox reports whether a line has a part in a box (Liang and Barsky 1984).
+func crossesBox(a, b pt, r box) bool {
+	t0, t1 := 0.0, 1.0
+	for _, side := range [4][2]float64{{a.x - b.x, a.x - r.x0}, {b.x - a.x, r.x1 - a.x}, {a.y - b.y, a.y - r.y0}, {b.y - a.y, r.y1 - a.y}} {
+		p, q := side[0], side[1]
+		switch {
+		case p == 0 && q < 0:
+			return false
+		case p < 0:
+			t0 = math.Max(t0, q/p)
+		case p > 0:
+			t1 = math.Min(t1, q/p)
+		}
+	}
+	return t0 < t1
 }
 
 func meetsAny(b box, list []box) bool {

@@ -7,7 +7,8 @@ import (
 
 // legend explains lines and marks: what is not on the sheet has no line in it.
 func (d *drawing) legend(k *column) {
-	if !k.heading("Legend") {
+	m := d.m
+	if len(m.bars)+len(m.feet)+len(m.roofs)+len(m.footings)+len(m.clears)+len(m.walls) == 0 || !k.heading("Legend") {
 		return
 	}
 	count := map[State]int{}
@@ -57,7 +58,7 @@ func (d *drawing) widthKey(k *column) {
 		if share < 1 {
 			area = roundFigures(area*share, 1)
 		}
-		words := fmt.Sprintf("%s cm², solid round %s mm", figures(area*cm2PerM2, 3), figures(solidDiameter(area), 3))
+		words := fmt.Sprintf("%s cm², solid round %s mm", short(roundFigures(area*cm2PerM2, 3), 6), short(roundFigures(solidDiameter(area), 3), 3))
 		if words == last {
 			continue
 		}

@@ -92,13 +92,20 @@ func (m *model) planExtent() extent {
 			take(p)
 		}
 	}
+	for _, a := range m.motion {
+		e.take(a.to.X, a.to.Y)
+	}
 	return e
 }
 
-// elevationExtent is what an elevation shows over the horizontal range from x0 to x1.
-func (m *model) elevationExtent(x0, x1 float64) extent {
+// elevationExtent is what an elevation shows: over a horizontal range, and as far beyond as something moves.
+func (m *model) elevationExtent(p projection, x0, x1 float64) extent {
 	size := math.Max(m.size(), m.high-m.low)
-	return extent{x0, m.low - marginShare*size, x1, m.high + marginShare*size}
+	e := extent{x0, m.low - marginShare*size, x1, m.high + marginShare*size}
+	for _, a := range m.motion {
+		e.take(p.flat(a.to))
+	}
+	return e
 }
 
 // axonometricExtent is what the axonometric view shows: the core from the ground to the top.
@@ -118,6 +125,9 @@ func (m *model) axonometricExtent() extent {
 	for _, b := range m.bars {
 		e.take(axonometric.flat(b.a))
 		e.take(axonometric.flat(b.b))
+	}
+	for _, a := range m.motion {
+		e.take(axonometric.flat(a.to))
 	}
 	return e
 }

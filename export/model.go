@@ -19,6 +19,7 @@ type model struct {
 	footings  []shape
 	walls     []shape
 	clears    []drawnPrism
+	motion    []drawnMotion
 	thickest  float64   // area of the thickest bar, m2
 	core      extent    // plan of roof, bars and feet
 	low, high float64   // heights of what stands and what it carries
@@ -66,6 +67,7 @@ func newModel(rec *layout.Record) *model {
 	m.takeBars()
 	m.takeFeet()
 	m.measure()
+	m.takeMotion()
 	return m
 }
 

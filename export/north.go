@@ -20,24 +20,20 @@ func (d *drawing) northArrow() {
 	d.c.text(letter, "N", writing{size: p.small, anchor: "middle", bold: true, colour: inkColour})
 }
 
-// scaleBar draws a bar of round length at the right end of the title line of a view, if there is room.
-func (d *drawing) scaleBar(v view, below float64) {
+// scaleBar draws a bar of round length in the title line of the plan: under the right end of the plan, or where the title leaves room.
+func (d *drawing) scaleBar() {
 	const longest, parts = 22.0, 4 // sizes of text
-	p := d.paper
-	metres := roundDown(longest * p.text / v.perM)
+	p, v := d.paper, d.plan
+	w := writing{size: p.small, anchor: "middle", colour: inkColour}
+	left := v.window.x0 + textWidth("Plan"+ratio(d.place.scale), p.text, true) + 3*p.text
+	right := math.Max(v.window.x1, d.place.plan.x1+(roomRight-0.5)*p.text) - 2*p.text
+	metres := roundDown(math.Min(longest*p.text, right-left) / v.perM)
 	length := metres * v.perM
 	label := short(metres, 2) + " m"
-	x1 := v.window.x1 - textWidth(label, p.small, false)/2
+	x1 := math.Max(v.window.x1-textWidth(label, p.small, false)/2, left+length)
 	x0 := x1 - length
-	y := v.window.y1 + below*p.text
-	w := writing{size: p.small, anchor: "middle", colour: inkColour}
+	y := v.window.y1 + planTitleLine*p.text
 	top := y - 0.45*p.text
-	mid := short(metres/2, 2)
-	for _, t := range []box{textBox(pt{x0, top - 0.35*p.small}, "0", w), textBox(pt{x1, top - 0.35*p.small}, label, w)} {
-		if !d.c.free(t) {
-			return
-		}
-	}
 	for i := range parts {
 		b := box{x0 + length*float64(i)/parts, top, x0 + length*float64(i+1)/parts, y}
 		fill := `fill="#fff" `
@@ -46,9 +42,14 @@ func (d *drawing) scaleBar(v view, below float64) {
 		}
 		d.c.rect(b, fill+stroke(inkColour, p.hair))
 	}
-	d.c.text(pt{x0, top - 0.35*p.small}, "0", w)
-	d.c.text(pt{(x0 + x1) / 2, top - 0.35*p.small}, mid, w)
-	d.c.text(pt{x1, top - 0.35*p.small}, label, w)
+	for _, t := range []struct {
+		x    float64
+		text string
+	}{{x1, label}, {x0, "0"}, {(x0 + x1) / 2, short(metres/2, 3)}} {
+		if at := (pt{t.x, top - 0.35*p.small}); d.c.free(textBox(at, t.text, w).grown(0.1 * p.small)) {
+			d.c.text(at, t.text, w)
+		}
+	}
 }
 
 // roundDown is the largest of 1, 2, 5, 10, 20 ... that is not above v.

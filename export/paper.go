@@ -42,6 +42,7 @@ type sizes struct{ plan, long, end, axo extent }
 type arrangement struct {
 	scale, axoScale      float64 // denominators
 	plan, long, end, axo box
+	endOnLeft            bool // the end elevation begins where the plan begins, not in the middle of its box
 }
 
 // arrange chooses sheet, scale and places. The plan and the long elevation share their horizontal axis, the two elevations their
@@ -64,7 +65,7 @@ func arrange(s sizes) (paper, arrangement) {
 
 // arranged tries the ways to place four views at a scale and returns the one with the largest axonometric view.
 func (p paper) arranged(s sizes, scale float64) (best arrangement, ok bool) {
-	for _, way := range []func(sizes, float64, float64) (arrangement, bool){p.sideBySide, p.threeRows, p.stacked} {
+	for _, way := range []func(sizes, float64, float64) (arrangement, bool){p.sideBySide, p.threeRows, p.stacked, p.fourRows} {
 		a, fits := way(s, scale, 0)
 		if !fits {
 			continue
@@ -91,10 +92,10 @@ func (p paper) area() box {
 
 // Room around a view for dimensions, levels and its title, in sizes of text.
 const (
-	roomLeft, roomRight   = 7.0, 4.5
-	roomTop               = 1.4
-	roomBelow, roomUnder  = 4.4, 9.2 // below a view; under the plan, which has dimensions there
-	titleLine, barOfScale = 2.6, 4.2
+	roomLeft, roomRight      = 7.0, 4.5
+	roomTop                  = 1.4
+	roomBelow, roomUnder     = 4.4, 9.2 // below a view; under the plan, which has dimensions there
+	titleLine, planTitleLine = 2.6, 8.4 // from the window down to the title
 )
 
 // cell is the size that a view needs with the room around it, mm.
@@ -156,4 +157,21 @@ func (p paper) stacked(s sizes, scale, spare float64) (a arrangement, ok bool) {
 	x := area.x1 - ew
 	return arrangement{scale: scale, plan: p.inner(box{area.x0, area.y0, area.x1, y0}, roomUnder), long: p.inner(box{area.x0, y0, area.x1, y1}, roomBelow),
 		end: p.inner(box{x, y1, area.x1, area.y1}, roomBelow), axo: p.inner(box{area.x0, y1, x, area.y1}, roomBelow)}, true
+}
+
+// fourRows has the views under each other, the end elevation last: for long roofs.
+func (p paper) fourRows(s sizes, scale, spare float64) (a arrangement, ok bool) {
+	area := p.area()
+	pw, ph := p.cell(s.plan, scale, roomUnder)
+	_, lh := p.cell(s.long, scale, roomBelow)
+	ew, eh := p.cell(s.end, scale, roomBelow)
+	if area.h() < ph+lh+eh || area.w() < pw || pw < ew {
+		return a, false
+	}
+	y0 := area.y0 + ph + spare/4
+	y1 := y0 + lh + spare/4
+	y2 := area.y1 - eh - spare/4
+	x := area.x0 + (area.w()-pw)/2
+	return arrangement{scale: scale, plan: p.inner(box{area.x0, area.y0, area.x1, y0}, roomUnder), long: p.inner(box{area.x0, y0, area.x1, y1}, roomBelow),
+		axo: p.inner(box{area.x0, y1, area.x1, y2}, roomBelow), end: p.inner(box{x, y2, area.x1, area.y1}, roomBelow), endOnLeft: true}, true
 }

@@ -10,17 +10,18 @@ import (
 // drawPlan draws the plan with dimensions, north, scale and the marks of the feet.
 func (d *drawing) drawPlan() {
 	d.planSite()
-	if d.m.rec.Collapse != nil {
-		d.collapseIn(d.plan)
-	}
 	d.style.drawBars(d.c, d.m, d.plan)
+	d.planOutlines()
+	d.collapseIn(d.plan)
 	d.planFeet()
 	d.planDimensions()
-	d.viewTitle(d.plan, "Plan", ratio(d.place.scale), roomUnder-roomTop*0.6)
-	d.scaleBar(d.plan, roomUnder-roomTop*0.6)
+	d.viewTitle(d.plan, d.place.plan, "Plan", ratio(d.place.scale), planTitleLine)
+	d.scaleBar()
 	d.northArrow()
-	d.footMarks()
-	d.siteLabels()
+	around := d.around()
+	d.footMarks(around)
+	around.window = d.plan.window
+	d.siteLabels(around)
 }
 
 // planSite draws what stands on the site, the roof over it.
@@ -45,7 +46,18 @@ func (d *drawing) planSite() {
 		for i, ring := range r.rings {
 			rings[i] = v.all(ring)
 		}
-		d.c.path(rings, true, fmt.Sprintf(`fill="%s" fill-opacity="0.13" fill-rule="evenodd" %s`, roofColour, stroke(inkColour, p.medium)))
+		d.c.path(rings, true, fmt.Sprintf(`fill="%s" fill-opacity="0.13" fill-rule="evenodd"`, roofColour))
+	}
+	d.c.close()
+}
+
+// planOutlines draws the edges of the roof.
+func (d *drawing) planOutlines() {
+	d.c.openClipped(d.plan.window, `stroke-linejoin="round"`)
+	for _, r := range d.m.roofs {
+		for _, ring := range r.rings {
+			d.c.path([][]pt{d.plan.all(ring)}, true, stroke(inkColour, d.paper.medium))
+		}
 	}
 	d.c.close()
 }
@@ -98,25 +110,31 @@ func (d *drawing) planFeet() {
 	}
 }
 
-// footMarks writes the mark of each foot with the larger of its largest reactions down and up.
-func (d *drawing) footMarks() {
-	p, r := d.paper, d.footSize()
-	var obstacles []box
+// around is what the words in the plan take heed of.
+func (d *drawing) around() surroundings {
+	r := d.footSize()
+	s := surroundings{window: d.plan.window.grown(d.paper.text)}
 	for _, f := range d.m.feet {
 		if f.mark != "" {
 			at := d.plan.at(f.at)
-			obstacles = append(obstacles, box{at.x - r, at.y - r, at.x + r, at.y + r})
+			s.obstacles = append(s.obstacles, box{at.x - r, at.y - r, at.x + r, at.y + r})
 		}
 	}
-	window := d.plan.window.grown(p.text)
-	w := writing{size: p.small, colour: inkColour, halo: true}
+	for _, b := range d.m.bars {
+		s.lines = append(s.lines, [2]pt{d.plan.at(b.a), d.plan.at(b.b)})
+	}
+	return s
+}
+
+// footMarks writes the mark of each foot with the larger of its largest reactions down and up.
+func (d *drawing) footMarks(around surroundings) {
+	w := writing{size: d.paper.small, colour: inkColour, halo: true}
 	for _, f := range d.m.feet {
 		if f.mark == "" {
 			continue
 		}
 		at := d.plan.at(f.at)
-		if !d.c.label(at, f.mark+"  "+verticalReaction(f.support), w, window, obstacles, p.hair) &&
-			!d.c.label(at, f.mark, w, window, obstacles, p.hair) {
+		if !d.c.label(at, f.mark+"  "+verticalReaction(f.support), w, around, d.paper.hair) && !d.c.label(at, f.mark, w, around, d.paper.hair) {
 			d.unnamed++
 		}
 	}
@@ -131,23 +149,21 @@ func verticalReaction(s support) string {
 }
 
 // siteLabels names zones, keep-clears and walls where there is room.
-func (d *drawing) siteLabels() {
-	p := d.paper
-	w := writing{size: p.small, colour: greyColour, halo: true}
+func (d *drawing) siteLabels(around surroundings) {
+	w := writing{size: d.paper.small, colour: greyColour, halo: true}
 	for _, k := range d.m.clears {
 		name := fmt.Sprintf("%s: clear %s to %s m", named(k.name, "Keep clear"), short(k.from, 2), short(k.to, 2))
-		d.nameRing(d.flatRings(d.plan, k.rings[:1], 0)[0], name, w)
+		d.nameRing(d.flatRings(d.plan, k.rings[:1], 0)[0], name, w, around)
+	}
+	for _, s := range d.m.walls {
+		if s.name != "" {
+			d.nameRing(d.plan.all(s.rings[0]), s.name, w, around)
+		}
 	}
 	w.colour = footingLine
 	for _, s := range d.m.footings {
 		if s.name != "" {
-			d.nameRing(d.plan.all(s.rings[0]), s.name, w)
-		}
-	}
-	w.colour = greyColour
-	for _, s := range d.m.walls {
-		if s.name != "" {
-			d.nameRing(d.plan.all(s.rings[0]), s.name, w)
+			d.nameRing(d.plan.all(s.rings[0]), s.name, w, around)
 		}
 	}
 }
@@ -159,12 +175,18 @@ func named(name, other string) string {
 	return name
 }
 
-// nameRing writes a name in or at a ring: at its middle, or else near one of its corners that shows.
-func (d *drawing) nameRing(ring []pt, name string, w writing) {
-	window := d.plan.window
+// strayed is what a name outside its ring costs, in lines that it would cover inside.
+const strayed = 25
+
+// inShape reports whether a place on the sheet lies in a ring.
+func inShape(ring []pt, at pt) bool { return inRing(planVecs(ring), at.x, at.y) }
+
+// nameRing writes a name in or at a ring: at its middle, its corners or the middles of its edges that show, wherever it covers the fewest
+// lines.
+func (d *drawing) nameRing(ring []pt, name string, w writing, around surroundings) {
 	shown := ring
 	if len(ring) >= 3 {
-		if shown = clipRing(ring, window); shown == nil {
+		if shown = clipRing(ring, around.window); shown == nil {
 			return
 		}
 	}
@@ -173,31 +195,34 @@ func (d *drawing) nameRing(ring []pt, name string, w writing) {
 		middle.x += q.x / float64(len(shown))
 		middle.y += q.y / float64(len(shown))
 	}
-	places := append([]pt{middle}, shown...)
+	places := []pt{middle}
 	for i, q := range shown {
 		r := shown[(i+1)%len(shown)]
-		places = append(places, pt{(q.x + r.x) / 2, (q.y + r.y) / 2}, pt{(q.x + middle.x) / 2, (q.y + middle.y) / 2})
+		places = append(places, q, pt{(q.x + r.x) / 2, (q.y + r.y) / 2}, pt{(q.x + middle.x) / 2, (q.y + middle.y) / 2})
 	}
-	obstacles := d.footBoxes()
+	best, at, anchor := -1, pt{}, ""
 	for _, q := range places {
-		for _, anchor := range []string{"middle", "start", "end"} {
-			w.anchor = anchor
-			b := textBox(q, name, w).grown(0.15 * w.size)
-			if window.contains(b) && d.c.free(b) && !meetsAny(b, obstacles) {
-				d.c.text(q, name, w)
-				return
+		for _, w.anchor = range []string{"middle", "start", "end"} {
+			for _, shift := range []float64{0.3, 1.2, -0.6} {
+				q := pt{q.x, q.y + shift*w.size}
+				b := textBox(q, name, w).grown(0.15 * w.size)
+				if !around.allowed(d.c, b) {
+					continue
+				}
+				n := around.covered(b)
+				if len(shown) >= 3 && !inShape(shown, pt{(b.x0 + b.x1) / 2, (b.y0 + b.y1) / 2}) {
+					n += strayed
+				}
+				if best < 0 || n < best {
+					best, at, anchor = n, q, w.anchor
+				}
 			}
 		}
 	}
-}
-
-func (d *drawing) footBoxes() (out []box) {
-	r := d.footSize()
-	for _, f := range d.m.feet {
-		at := d.plan.at(f.at)
-		out = append(out, box{at.x - r, at.y - r, at.x + r, at.y + r})
+	if best >= 0 {
+		w.anchor = anchor
+		d.c.text(at, name, w)
 	}
-	return out
 }
 
 // planDimensions measures the roof (or what there is) over all, and the lines of the feet where they are few.

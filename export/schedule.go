@@ -12,6 +12,9 @@ func (d *drawing) numbers(k *column) {
 		return
 	}
 	s, mat := d.m.sum, d.m.rec.Material
+	if s.Status != "optimal" {
+		k.paragraph("Stopped early ("+s.Status+"): the best layout so far.", d.paper.small, writing{bold: true})
+	}
 	k.pair("Volume of bars", figures(s.VolumeM3, 4)+" m³")
 	if differ(s.ObjectiveM3, s.VolumeM3) {
 		k.pair("Objective (volume with costs of joints, roof bars, feet)", figures(s.ObjectiveM3, 4)+" m³")
@@ -35,6 +38,9 @@ func (d *drawing) numbers(k *column) {
 	}
 }
 
+// million m3: beyond that the number says nothing.
+const million = 1e6
+
 // differ reports whether two volumes differ by more than a sheet shows.
 func differ(a, b float64) bool { return figures(a, 4) != figures(b, 4) }
 
@@ -56,7 +62,7 @@ func deckWords(deck string) string {
 	return deck
 }
 
-// evidence tells why no layout exists.
+// evidence tells why there is no layout.
 func (d *drawing) evidence(k *column) {
 	if c := d.m.rec.Collapse; c != nil {
 		if k.heading("No layout exists") {
@@ -64,21 +70,33 @@ func (d *drawing) evidence(k *column) {
 			k.gap(0.3)
 			k.pair("Case that drives the motion", c.Case)
 			k.pair("Work of its loads on the motion drawn in metres", figures(c.WorkKJ, 3)+" kJ")
-			if c.LeastVolumeM3 > 0 {
-				k.pair("Any layout would need at least", figures(c.LeastVolumeM3, 3)+" m³")
+			switch v := c.LeastVolumeM3; {
+			case v >= million:
+				k.pair("Any layout would need more than", "a million m³")
+			case v > 0:
+				k.pair("Any layout would need at least", figures(v, 3)+" m³")
 			}
 		}
 		return
 	}
-	if len(d.m.rec.Bars) == 0 && k.heading("No layout") {
-		k.paragraph("The work ended before any layout was found. Status: "+d.m.rec.Status+".", d.paper.text, writing{})
+	if len(d.m.rec.Bars) > 0 || !k.heading("No bars") {
+		return
 	}
+	words := "The work ended before a layout was found that carries all cases (" + d.m.rec.Status + ")."
+	if d.m.rec.Status == "optimal" {
+		words = "No bar is needed: every load stands on a support."
+	}
+	k.paragraph(words, d.paper.text, writing{})
 }
 
 // cases lists the cases: those in which the layout was solved first.
 func (d *drawing) cases(k *column, most int) {
 	s := d.m.sum
-	if s.Cases == 0 || !k.heading(fmt.Sprintf("%s, of which %d govern (dark)", counted(s.Cases, "case"), s.Governing)) {
+	verb := "govern"
+	if s.Governing == 1 {
+		verb = "governs"
+	}
+	if s.Cases == 0 || !k.heading(fmt.Sprintf("%s, of which %d %s (dark)", counted(s.Cases, "case"), s.Governing, verb)) {
 		return
 	}
 	p := d.paper

@@ -38,9 +38,9 @@ type drawing struct {
 func draw(rec *layout.Record) *drawing {
 	m := newModel(rec)
 	s := sizes{plan: m.planExtent(), axo: m.axonometricExtent()}
-	s.long = m.elevationExtent(s.plan.x0, s.plan.x1)
+	s.long = m.elevationExtent(longElevation, s.plan.x0, s.plan.x1)
 	around := m.core.grown(marginShare * m.size())
-	s.end = m.elevationExtent(around.y0, around.y1)
+	s.end = m.elevationExtent(endElevation, around.y0, around.y1)
 	p, a := arrange(s)
 	d := &drawing{c: newCanvas(p.w, p.h, rec.Title), m: m, paper: p, place: a, style: newBarStyle(m, p, a.scale)}
 	d.plan = placed(planView, s.plan, a.plan, a.scale)
@@ -50,17 +50,27 @@ func draw(rec *layout.Record) *drawing {
 	d.level()
 	d.frame()
 	d.drawPlan()
-	d.drawElevation(d.long, "Long elevation", d.side(0, -1))
-	d.drawElevation(d.end, "End elevation", d.side(1, 0))
+	long, short := "", ""
+	if m.core.w() > squarish*m.core.h() {
+		long, short = "long side, ", "short side, "
+	}
+	d.drawElevation(d.long, a.long, long+"from the "+d.side(0, -1))
+	d.drawElevation(d.end, a.end, short+"from the "+d.side(1, 0))
 	d.drawAxonometric()
 	d.words()
 	return d
 }
 
+// squarish is the ratio of two sides up to which none is called the long one.
+const squarish = 1.05
+
 // level brings the two elevations to one ground line where they stand side by side, and the long elevation under the plan.
 func (d *drawing) level() {
 	shift := d.plan.window.x0 - d.long.window.x0
 	d.long = d.long.moved(shift, 0)
+	if d.place.endOnLeft {
+		d.end = d.end.moved(d.plan.window.x0-d.end.window.x0, 0)
+	}
 	if math.Abs(d.place.long.y0-d.place.end.y0) < 1 {
 		d.end = d.end.moved(0, d.long.window.y1-d.end.window.y1)
 	}
@@ -82,13 +92,20 @@ func (d *drawing) frame() {
 	d.c.line(pt{x, f.y0}, pt{x, f.y1}, stroke(inkColour, p.fine))
 }
 
-// viewTitle writes the name and the scale of a view under it; below is the distance in sizes of text from the window.
-func (d *drawing) viewTitle(v view, name, scale string, below float64) {
+// viewTitle writes the name and the scale of a view under it; below is the distance in sizes of text from the window. What has no room
+// beside the name in the cell of the view goes on a line of its own.
+func (d *drawing) viewTitle(v view, cell box, name, words string, below float64) {
 	p := d.paper
-	y := v.window.y1 + below*p.text
-	d.c.text(pt{v.window.x0, y}, name, writing{size: p.text, bold: true, colour: inkColour})
-	x := v.window.x0 + textWidth(name, p.text, true) + p.text
-	d.c.text(pt{x, y}, scale, writing{size: p.text, colour: inkColour})
+	at := pt{v.window.x0, v.window.y1 + below*p.text}
+	d.c.text(at, name, writing{size: p.text, bold: true, colour: inkColour})
+	right := cell.x1 + (roomRight-0.5)*p.text
+	width := textWidth(name, p.text, true) + p.text
+	if at.x+width+textWidth(words, p.text, false) <= right {
+		at.x += width
+	} else {
+		at.y += leading * p.text
+	}
+	d.c.text(at, trimmed(words, right-at.x, p.text, false), writing{size: p.text, colour: inkColour})
 }
 
 func ratio(denominator float64) string { return fmt.Sprintf("1:%s", short(denominator, 0)) }

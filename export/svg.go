@@ -168,7 +168,7 @@ func (c *canvas) text(p pt, s string, w writing) {
 	b := textBox(p, s, w)
 	c.texts = append(c.texts, placedText{s, b})
 	if w.halo {
-		c.rect(b, `fill="#fff" fill-opacity="0.8"`)
+		c.rect(b, `fill="#fff" fill-opacity="0.85"`)
 	}
 	fmt.Fprintf(&c.b, `<text x="%s" y="%s" font-size="%s" fill="%s"`, c.n(p.x), c.n(p.y), c.n(w.size), w.colour)
 	if w.anchor != "" && w.anchor != "start" {
