@@ -30,26 +30,29 @@ func newProgress(w io.Writer) pipeline.Observer {
 	return &lines{w: w}
 }
 
-// describe says in words how far a stage is.
+// describe says in words how far a stage is, what matters most first: a narrow terminal shows only the beginning.
 func describe(s pipeline.Step) string {
 	var words []string
-	if s.Round > 0 {
-		words = append(words, fmt.Sprintf("round %d", s.Round))
-	}
-	if s.AllOf > 0 {
-		words = append(words, fmt.Sprintf("%d of %d cases", s.Cases, s.AllOf))
-	}
-	if s.Bars > 0 {
-		words = append(words, fmt.Sprintf("%d bars", s.Bars))
+	if s.Bound > 0 {
+		words = append(words, "gap "+percent(s.Gap))
 	}
 	if s.Volume > 0 {
 		words = append(words, fmt.Sprintf("volume %.4g m3", s.Volume))
 	}
 	if s.Bound > 0 {
-		words = append(words, fmt.Sprintf("bound %.4g m3", s.Bound), "gap "+percent(s.Gap))
+		words = append(words, fmt.Sprintf("bound %.4g m3", s.Bound))
 	}
-	if len(words) == 0 {
-		return s.Part
+	if s.Round > 0 {
+		words = append(words, fmt.Sprintf("round %d", s.Round))
+	}
+	if s.AllOf > 0 && s.Cases > 0 {
+		words = append(words, fmt.Sprintf("%d of %d cases", s.Cases, s.AllOf))
+	}
+	if s.Bars > 0 {
+		words = append(words, fmt.Sprintf("%d bars", s.Bars))
+	}
+	if s.Part != "" {
+		words = append([]string{s.Part}, words...)
 	}
 	return strings.Join(words, ", ")
 }
@@ -96,25 +99,26 @@ type bars struct {
 	stage string
 	begun time.Time
 	last  time.Time
-	step  pipeline.Step
-	open  bool // the cursor stands on an unfinished line
+	done  float64 // furthest so far: an estimate may fall back, a bar that does only puzzles
+	open  bool    // the cursor stands on an unfinished line
 }
 
 func (b *bars) Begin(stage string) {
-	b.stage, b.begun, b.last = stage, time.Now(), time.Time{}
+	b.stage, b.begun, b.last, b.done = stage, time.Now(), time.Time{}, 0
 	b.draw(0, "")
 }
 
 func (b *bars) Step(s pipeline.Step) {
+	b.done = max(b.done, s.Done)
 	if time.Since(b.last) >= redrawEvery {
 		b.last = time.Now()
-		b.draw(s.Done, describe(s)+", "+seconds(time.Since(b.begun)))
+		b.draw(b.done, describe(s)+", "+seconds(time.Since(b.begun)))
 	}
 }
 
 func (b *bars) End(_, result string, took time.Duration) {
-	b.draw(1, result+" ("+seconds(took)+")")
-	fmt.Fprintln(b.w)
+	// The last line of a stage may run over the width: it stays as it is.
+	fmt.Fprint(b.w, "\r\x1b[K"+b.line(1, result+" ("+seconds(took)+")")+"\n")
 	b.open = false
 }
 
@@ -132,11 +136,15 @@ func (b *bars) Issue(i geom.Issue) {
 	b.open = false
 }
 
+// line is the line of the stage: its name, its bar, and words.
+func (b *bars) line(done float64, text string) string {
+	full := max(0, min(barWidth, int(done*barWidth+0.5)))
+	return fmt.Sprintf("%-16s [%s%s] %s", b.stage, strings.Repeat("#", full), strings.Repeat(".", barWidth-full), text)
+}
+
 // draw writes the line of the stage over itself, cut to the width that the terminal has now.
 func (b *bars) draw(done float64, text string) {
-	full := int(done*barWidth + 0.5)
-	full = max(0, min(barWidth, full))
-	line := fmt.Sprintf("%-16s [%s%s] %s", b.stage, strings.Repeat("#", full), strings.Repeat(" ", barWidth-full), text)
+	line := b.line(done, text)
 	if width, _, err := term.GetSize(b.fd); err == nil && width > 1 {
 		if r := []rune(line); len(r) > width-1 {
 			line = string(r[:width-1])

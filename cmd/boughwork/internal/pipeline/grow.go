@@ -168,7 +168,8 @@ func (g *growth) layout(ctx context.Context) (string, error) {
 	res, err := layout.Solve(ctx, g.out.Structure, layout.Options{
 		Gap: study.Solve.Gap, Solver: g.solver, MaxRounds: study.Solve.Rounds,
 		Progress: func(p layout.Progress) {
-			g.obs.Step(Step{Stage: StageLayout, Part: p.Stage, Done: p.Done, Round: p.Round, Cases: p.Cases, AllOf: p.AllOf,
+			part, done := layoutPart(p)
+			g.obs.Step(Step{Stage: StageLayout, Part: part, Done: done, Round: p.Round, Cases: p.Cases, AllOf: p.AllOf,
 				Bars: p.Bars, Volume: p.Volume, Bound: p.Bound, Gap: p.Gap})
 		},
 	})
@@ -178,12 +179,34 @@ func (g *growth) layout(ctx context.Context) (string, error) {
 	g.out.Record = layout.NewRecord(g.out.Structure, res, layout.Meta{
 		MadeBy: g.job.MadeBy, BriefSHA256: study.SHA256, Context: sketchSite(g.out.Site),
 	})
-	if res.Status == lp.NoEquilibrium {
-		return "no layout exists", nil
-	}
 	c := g.out.Record.Certificate
+	switch {
+	case res.Status == lp.NoEquilibrium:
+		return "no layout exists", nil
+	case len(res.Bars) == 0 && res.Status != lp.Optimal:
+		return fmt.Sprintf("%s: no layout that carries all cases yet, bound %.4g m3", res.Status, c.BoundM3), nil
+	}
 	return fmt.Sprintf("%s: volume %.4g m3, bound %.4g m3, gap %.2g %%, %s", res.Status, c.VolumeM3, c.BoundM3, 100*c.Gap,
 		count(len(g.out.Record.Bars), "bar")), nil
+}
+
+// shareOfTidying is how much of the layout stage is left when the gap is reached, for the bar.
+const shareOfTidying = 0.1
+
+// layoutPart names what the layout stage is at, and estimates the share of the stage that is done. Checking the cases
+// and tidying have a share of their own; the stage as a whole moves with the gap.
+func layoutPart(p layout.Progress) (part string, done float64) {
+	switch p.Stage {
+	case "candidates":
+		return "counting candidates", 0
+	case "layout":
+		return "", p.Done * (1 - shareOfTidying)
+	case "cases":
+		return fmt.Sprintf("checking cases, %.0f %%", 100*p.Done), 0
+	case "tidying":
+		return "tidying", 1 - shareOfTidying*(1-p.Done)
+	}
+	return p.Stage, 0
 }
 
 // count writes a number with its noun.
