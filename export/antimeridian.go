@@ -14,9 +14,10 @@ func cutPoint(u, v geom.Vec, x float64) geom.Vec {
 	return c
 }
 
-// cutPolygon returns the parts of a polygon (open rings, the first anticlockwise, the others clockwise) where side x (x - at) <= 0, side
-// being 1 or -1. The rings are walked; the stretches on the wanted side are chains that begin and end on the cut. Along the cut,
-// inside and outside take turns, so sorted ends belong together in pairs, which joins the chains to rings again.
+// cutPolygon returns the parts of a polygon (open rings, the first anticlockwise, the others clockwise) where side x (x -
+// at) <= 0, side being 1 or -1. The rings are walked; the stretches on the wanted side are chains that begin and end on
+// the cut. Along the cut, inside and outside take turns, so sorted ends belong together in pairs, which joins the chains
+// to rings again.
 func cutPolygon(rings [][]geom.Vec, at, side float64) [][][]geom.Vec {
 	var chains [][]geom.Vec
 	var whole [][]geom.Vec

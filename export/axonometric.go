@@ -16,7 +16,7 @@ func (d *drawing) drawAxonometric() {
 	d.axonometricGround(v)
 	thin := d.style
 	thin.widest *= axonometricWidth(d.place)
-	thin.drawBars(d.c, d.m, v)
+	thin.drawBars(d.c, d.m, v, d.paper.hair)
 	d.skins(v, 0.2)
 	d.collapseIn(v)
 	d.viewTitle(v, d.place.axo, "Axonometric view", fmt.Sprintf("from the %s, %s along the front and up, %s in depth",

@@ -6,8 +6,8 @@ import (
 	"sort"
 )
 
-// Colours. Tension and compression are bluish green and vermilion, bars that work both ways blue, of the set of Okabe and Ito 2008; each has
-// its own line as well: a light core, none, a broken core.
+// Colours. Tension and compression are bluish green and vermilion, bars that work both ways blue, of the set of Okabe and
+// Ito 2008; each has its own line as well: a light core, none, a broken core.
 const (
 	tensionColour     = "#009E73"
 	compressionColour = "#D55E00"
@@ -45,10 +45,10 @@ type barStyle struct {
 // newBarStyle chooses the widths so that a plan at 1:scale is not covered in ink.
 func newBarStyle(m *model, p paper, scale float64) barStyle {
 	s := barStyle{widest: p.widest, least: thinnest, thickest: m.thickest, opacity: 1}
-	switch {
-	case len(m.bars) > crowdedBars:
+	switch n := len(m.bars) - m.faint; {
+	case n > crowdedBars:
 		s.least, s.opacity = thinnestCrowd, 0.85
-	case len(m.bars) > manyBars:
+	case n > manyBars:
 		s.least, s.opacity = thinnestMany, 0.9
 	}
 	per := mmPerM / scale
@@ -56,6 +56,9 @@ func newBarStyle(m *model, p paper, scale float64) barStyle {
 	for s.widest > leastWidest*p.widest {
 		ink := 0.0
 		for _, b := range m.bars {
+			if b.faint {
+				continue
+			}
 			ink += math.Hypot(b.a.X-b.b.X, b.a.Y-b.b.Y) * per * s.width(b.area)
 		}
 		if ink <= inkShare*sheet {
@@ -100,20 +103,37 @@ func (s barStyle) bar(c *canvas, a, b pt, area float64, state State, kept bool) 
 	}
 }
 
-// drawBars draws all bars of a view, the far ones first; where there are few enough, each passes visibly in front of those behind it.
-func (s barStyle) drawBars(c *canvas, m *model, v view) {
-	order := make([]int, len(m.bars))
+// faintLine is how the faint bars are drawn.
+func faintLine(state State, width float64) string {
+	colour := map[State]string{Tension: tensionColour, Compression: compressionColour, Both: bothColour}[state]
+	return stroke(named(colour, greyColour), width) + ` stroke-opacity="0.35"`
+}
+
+// mostFaint is the count of faint bars up to which they are drawn; more would be a veil over the drawing, and are left
+// out. The legend says which.
+const mostFaint = 600
+
+// drawBars draws the bars of a view: under all others the faint ones as hairlines, then the far ones first; where there are few
+// enough, each passes visibly in front of those behind it.
+func (s barStyle) drawBars(c *canvas, m *model, v view, hair float64) {
+	var order []int
 	depth := make([]float64, len(m.bars))
+	c.openClipped(v.window.grown(s.widest), fmt.Sprintf(`stroke-linecap="round" opacity="%s"`, short(s.opacity, 2)))
 	for i, b := range m.bars {
-		order[i] = i
+		if b.faint {
+			if m.faint <= mostFaint {
+				c.line(v.at(b.a), v.at(b.b), faintLine(b.state, hair))
+			}
+			continue
+		}
+		order = append(order, i)
 		depth[i] = v.near(b.a.Add(b.b).Scale(0.5))
 	}
 	sort.SliceStable(order, func(i, j int) bool { return depth[order[i]] < depth[order[j]] })
-	c.openClipped(v.window.grown(s.widest), fmt.Sprintf(`stroke-linecap="round" opacity="%s"`, short(s.opacity, 2)))
 	for _, i := range order {
 		b := m.bars[i]
 		from, to := v.at(b.a), v.at(b.b)
-		if len(m.bars) <= manyBars {
+		if len(order) <= manyBars {
 			c.line(from, to, stroke(paperColour, s.width(b.area)+haloWidth)+` stroke-linecap="butt"`)
 		}
 		s.bar(c, from, to, b.area, b.state, b.kept)

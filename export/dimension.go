@@ -39,7 +39,8 @@ func (d *drawing) dimensionText(at pt, metres, room float64, up bool) {
 	}
 }
 
-// chain is where along an axis (m) the feet stand, between the ends of the roof: nil if that are too many to read, or nothing but the ends.
+// chain is where along an axis (m) the feet stand, between the ends of the roof: nil if that are too many to read, or
+// nothing but the ends.
 func (d *drawing) chain(positions []float64, ends [2]float64, per float64) []float64 {
 	const most = 9
 	at := append([]float64{ends[0], ends[1]}, positions...)

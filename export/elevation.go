@@ -10,7 +10,7 @@ import (
 // drawElevation draws what is seen from one side.
 func (d *drawing) drawElevation(v view, cell box, words string) {
 	d.elevationSite(v)
-	d.style.drawBars(d.c, d.m, v)
+	d.style.drawBars(d.c, d.m, v, d.paper.hair)
 	d.skins(v, 0.2)
 	d.collapseIn(v)
 	d.standing(v)

@@ -29,8 +29,8 @@ func newPlacer(rec *layout.Record) placer {
 	return placer{true, geom.Frame{Geographic: true, Lon: o[0], Lat: o[1]}}
 }
 
-// plan returns a place in local metres in the coordinates of the file. A longitude is not brought into -180 to 180 but continues that of the
-// origin, so that what lies across the antimeridian can be cut there.
+// plan returns a place in local metres in the coordinates of the file. A longitude is not brought into -180 to 180 but
+// continues that of the origin, so that what lies across the antimeridian can be cut there.
 func (p placer) plan(x, y float64) (lon, lat float64) {
 	if !p.geographic {
 		return x, y

@@ -5,8 +5,8 @@ import (
 	"sort"
 )
 
-// hatch returns parallel lines at 45 degrees inside closed rings on the sheet (even-odd rule), step mm apart. The lines of all shapes
-// of a sheet lie on one lattice, so that neighbours match.
+// hatch returns parallel lines at 45 degrees inside closed rings on the sheet (even-odd rule), step mm apart. The lines
+// of all shapes of a sheet lie on one lattice, so that neighbours match.
 func hatch(rings [][]pt, step float64) (lines [][]pt) {
 	// In the turned system s runs along the lines and t across them.
 	type edge struct{ s0, t0, s1, t1 float64 }
@@ -38,8 +38,8 @@ func hatch(rings [][]pt, step float64) (lines [][]pt) {
 
 func turnedBack(s, t float64) pt { return pt{(s + t) / math.Sqrt2, (t - s) / math.Sqrt2} }
 
-// clipRing cuts a ring on the sheet to a box (Sutherland and Hodgman 1974). A result in several parts comes as one ring joined along the
-// edge of the box, which is right for filling.
+// clipRing cuts a ring on the sheet to a box (Sutherland and Hodgman 1974). A result in several parts comes as one ring
+// joined along the edge of the box, which is right for filling.
 func clipRing(ring []pt, b box) []pt {
 	sides := []func(p pt) float64{
 		func(p pt) float64 { return p.x - b.x0 }, func(p pt) float64 { return b.x1 - p.x },

@@ -17,6 +17,7 @@ type surroundings struct {
 	window    box
 	obstacles []box
 	lines     [][2]pt
+	leaders   [][2]pt // of the labels that are there already
 }
 
 // covered is how many lines a box covers.
@@ -29,6 +30,19 @@ func (s surroundings) covered(b box) (n int) {
 	return n
 }
 
+// crossed is how many leaders a line crosses.
+func (s surroundings) crossed(a, b pt) (n int) {
+	for _, l := range s.leaders {
+		if side(a, b, l[0])*side(a, b, l[1]) < 0 && side(l[0], l[1], a)*side(l[0], l[1], b) < 0 {
+			n++
+		}
+	}
+	return n
+}
+
+// side is positive, negative or zero as c lies on one side of the line from a to b, on the other, or on it.
+func side(a, b, c pt) float64 { return (b.x-a.x)*(c.y-a.y) - (b.y-a.y)*(c.x-a.x) }
+
 // allowed reports whether a text may have a box.
 func (s surroundings) allowed(c *canvas, b box) bool {
 	return s.window.contains(b) && c.free(b) && !meetsAny(b, s.obstacles)
@@ -37,9 +51,12 @@ func (s surroundings) allowed(c *canvas, b box) bool {
 // farther is what one step away from its place costs a label, in lines that it would cover otherwise.
 const farther = 0.7
 
-// label writes a text beside a place where it meets no other text, no obstacle and no edge of the window: where it covers few lines and
-// is near, above rather than below. It has a leader if it had to go far. It reports whether there was room.
-func (c *canvas) label(p pt, s string, w writing, around surroundings, hair float64) bool {
+// tangled is what a leader that crosses another costs, in lines that it would cover otherwise.
+const tangled = 12
+
+// label writes a text beside a place where it meets no other text, no obstacle and no edge of the window: where it covers
+// few lines and is near, above rather than below. It has a leader if it had to go far. It reports whether there was room.
+func (c *canvas) label(p pt, s string, w writing, around *surroundings, hair float64) bool {
 	const turns, rings = 12, 7
 	best, bestAt, bestBox, bestAnchor, far := math.Inf(1), pt{}, box{}, "", false
 	for ring := range rings {
@@ -62,7 +79,8 @@ func (c *canvas) label(p pt, s string, w writing, around surroundings, hair floa
 			if !around.allowed(c, b) {
 				continue
 			}
-			if cost := float64(ring)*farther + float64(around.covered(b)); cost < best {
+			cost := float64(ring)*farther + float64(around.covered(b)) + tangled*float64(around.crossed(p, nearestOf(b, p)))
+			if cost < best {
 				best, bestAt, bestBox, bestAnchor, far = cost, q, b, w.anchor, ring > 1
 			}
 		}
@@ -71,7 +89,9 @@ func (c *canvas) label(p pt, s string, w writing, around surroundings, hair floa
 		return false
 	}
 	if far {
-		c.line(p, nearestOf(bestBox, p), stroke(inkColour, hair))
+		end := nearestOf(bestBox, p)
+		c.line(p, end, stroke(inkColour, hair))
+		around.leaders = append(around.leaders, [2]pt{p, end})
 	}
 	w.anchor = bestAnchor
 	c.text(bestAt, s, w)

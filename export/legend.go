@@ -14,7 +14,9 @@ func (d *drawing) legend(k *column) {
 	count := map[State]int{}
 	kept := false
 	for _, b := range d.m.bars {
-		count[b.state]++
+		if !b.faint {
+			count[b.state]++
+		}
 		kept = kept || b.kept
 	}
 	sample := d.m.thickest * 0.45
@@ -31,6 +33,7 @@ func (d *drawing) legend(k *column) {
 	if kept {
 		d.legendLine(k, "kept member (dark edges)", func(a, b pt) { d.style.bar(d.c, a, b, sample, Compression, true) })
 	}
+	d.faintLegend(k)
 	d.widthKey(k)
 	d.legendSigns(k)
 }
@@ -67,18 +70,51 @@ func (d *drawing) widthKey(k *column) {
 		d.legendLine(k, words, func(a, b pt) { d.c.line(a, b, stroke(inkColour, w)) })
 	}
 	if area := d.style.clampedArea(); d.thinnest() < area {
-		d.legendLine(k, fmt.Sprintf("all bars under %s cm² look the same", figures(area*cm2PerM2, 2)), func(a, b pt) { d.c.line(a, b, stroke(inkColour, d.style.least)) })
+		d.legendLine(k, fmt.Sprintf("all thinner than %s cm² look the same", figures(area*cm2PerM2, 2)), func(a, b pt) {
+			d.c.line(a, b, stroke(inkColour, d.style.least))
+		})
 	}
 	k.gap(0.3)
 }
 
-// thinnest is the least area of a bar, m2.
+// thinnest is the least area of a bar that is not faint, m2.
 func (d *drawing) thinnest() float64 {
 	least := math.Inf(1)
 	for _, b := range d.m.bars {
-		least = math.Min(least, b.area)
+		if !b.faint {
+			least = math.Min(least, b.area)
+		}
 	}
 	return least
+}
+
+// faintLegend says how many bars are drawn as hairlines or left out, and how little they are.
+func (d *drawing) faintLegend(k *column) {
+	share := figures(100*d.faintShare(), 2)
+	switch n := d.m.faint; {
+	case n > mostFaint:
+		d.legendLine(k, fmt.Sprintf("not drawn: the %d thinnest bars, %s %% of the volume", n, share), nil)
+	case n > 0:
+		d.legendLine(k, fmt.Sprintf("the %s, %s %% of the volume", counted(n, "thinnest bar"), share), func(a, b pt) {
+			d.c.line(a, b, faintLine(Idle, d.paper.hair))
+		})
+	}
+}
+
+// faintShare is the share of the faint bars in the volume.
+func (d *drawing) faintShare() float64 {
+	faint, all := 0.0, 0.0
+	for _, b := range d.m.bars {
+		v := b.area * b.a.Sub(b.b).Norm()
+		all += v
+		if b.faint {
+			faint += v
+		}
+	}
+	if all == 0 {
+		return 0
+	}
+	return faint / all
 }
 
 // legendSigns explains the signs of the site.
@@ -94,6 +130,9 @@ func (d *drawing) legendSigns(k *column) {
 			d.c.rect(box{q.x - r, q.y - r, q.x + r, q.y + r}, `fill="#fff" `+stroke(inkColour, p.medium))
 			d.c.circle(q, 0.45*r, `fill="`+inkColour+`"`)
 		})
+		if d.unnamed > 0 {
+			d.legendLine(k, fmt.Sprintf("%s without room for the mark: see joints.csv", footCount(d.unnamed)), nil)
+		}
 	} else if len(d.m.feet) > 0 {
 		d.legendLine(k, "place where a foot may stand", func(a, b pt) { d.c.circle(middle(a, b), 0.2*p.small, `fill="`+footingLine+`"`) })
 	}
@@ -122,6 +161,14 @@ func (d *drawing) legendSigns(k *column) {
 	if len(d.m.walls) > 0 {
 		d.legendLine(k, "wall", func(a, b pt) { d.c.line(a, b, stroke(greyColour, p.heavy*1.4)) })
 	}
+}
+
+// footCount writes a number of feet.
+func footCount(n int) string {
+	if n == 1 {
+		return "1 foot"
+	}
+	return fmt.Sprintf("%d feet", n)
 }
 
 // counted writes a number with its noun.

@@ -2,6 +2,7 @@ package export
 
 import (
 	"math"
+	"sort"
 
 	"boughwork/geom"
 	"boughwork/ground/layout"
@@ -21,6 +22,7 @@ type model struct {
 	clears    []drawnPrism
 	motion    []drawnMotion
 	thickest  float64   // area of the thickest bar, m2
+	faint     int       // count of faint bars
 	core      extent    // plan of roof, bars and feet
 	low, high float64   // heights of what stands and what it carries
 	levels    []float64 // heights worth naming
@@ -31,6 +33,7 @@ type drawnBar struct {
 	area  float64
 	state State
 	kept  bool
+	faint bool // one of the many that together hardly weigh anything
 }
 
 type drawnFoot struct {
@@ -212,8 +215,41 @@ func toRings(rings [][]geom.Vec, p geom.Vec) float64 {
 
 func (m *model) takeBars() {
 	for _, b := range m.rec.Bars {
-		m.bars = append(m.bars, drawnBar{m.axes.to(at(m.rec, b.Nodes[0])), m.axes.to(at(m.rec, b.Nodes[1])), b.AreaM2, extremesOf(b).state(), b.Kept})
+		m.bars = append(m.bars, drawnBar{a: m.axes.to(at(m.rec, b.Nodes[0])), b: m.axes.to(at(m.rec, b.Nodes[1])), area: b.AreaM2,
+			state: extremesOf(b).state(), kept: b.Kept})
 		m.thickest = math.Max(m.thickest, b.AreaM2)
+	}
+	m.findFaint()
+}
+
+const (
+	// faintVolume is the share of the volume that the faint bars have together at most.
+	faintVolume = 0.02
+	// faintArea is the share of the area of the thickest bar that a faint bar has at most: a tenth of its diameter.
+	faintArea = 0.01
+)
+
+// findFaint marks the thinnest bars. A layout found by an interior method can have thousands of bars that carry next to
+// nothing; drawn like the others they would hide what carries the roof.
+func (m *model) findFaint() {
+	order := make([]int, len(m.bars))
+	volume := 0.0
+	for i, b := range m.bars {
+		order[i] = i
+		volume += b.area * b.a.Sub(b.b).Norm()
+	}
+	sort.SliceStable(order, func(i, j int) bool { return m.bars[order[i]].area < m.bars[order[j]].area })
+	sum := 0.0
+	for _, i := range order {
+		b := &m.bars[i]
+		sum += b.area * b.a.Sub(b.b).Norm()
+		if sum > faintVolume*volume || b.area > faintArea*m.thickest {
+			return
+		}
+		if !b.kept {
+			b.faint = true
+			m.faint++
+		}
 	}
 }
 

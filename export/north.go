@@ -20,7 +20,8 @@ func (d *drawing) northArrow() {
 	d.c.text(letter, "N", writing{size: p.small, anchor: "middle", bold: true, colour: inkColour})
 }
 
-// scaleBar draws a bar of round length in the title line of the plan: under the right end of the plan, or where the title leaves room.
+// scaleBar draws a bar of round length in the title line of the plan: under the right end of the plan, or where the title
+// leaves room.
 func (d *drawing) scaleBar() {
 	const longest, parts = 22.0, 4 // sizes of text
 	p, v := d.paper, d.plan

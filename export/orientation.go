@@ -7,9 +7,9 @@ import (
 	"boughwork/geom"
 )
 
-// principalAxes returns the axes of the rectangle of least area round some places in plan, u along its longer side. Of the two ways that u
-// can point it takes the one nearer to east, so that north stays as far up on the sheet as it can; a square is turned by 45
-// degrees at most.
+// principalAxes returns the axes of the rectangle of least area round some places in plan, u along its longer side. Of
+// the two ways that u can point it takes the one nearer to east, so that north stays as far up on the sheet as it can; a
+// square is turned by 45 degrees at most.
 func principalAxes(places []geom.Vec) axes {
 	hull := convexHull(places)
 	if len(hull) == 0 {

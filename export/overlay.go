@@ -9,8 +9,8 @@ import (
 	"boughwork/ground/layout"
 )
 
-// Overlay writes overlay.geojson: the result on the site plan, as GeoJSON by RFC 7946 in longitude and latitude on WGS 84 with heights in metres.
-// The property kind says what a feature is:
+// Overlay writes overlay.geojson: the result on the site plan, as GeoJSON by RFC 7946 in longitude and latitude on WGS 84
+// with heights in metres. The property kind says what a feature is:
 //
 //	roof, wall, footing        the site as it came; polygons, lines or points with heights
 //	keep-clear, envelope       the plan of a prism, without heights; from_m and to_m say where it stands
@@ -23,9 +23,10 @@ import (
 // Marks are those of the tables and the sheet. The member cases names the cases in the order of all arrays. Outer rings run
 // anticlockwise and holes clockwise; what crosses the antimeridian is cut there (RFC 7946, 3.1.6 and 3.1.9).
 //
-// A site that came in metres has no known place on the earth, so its longitudes and latitudes cannot be told. Such a record is written
-// in the site's own metres, and the member coordinates_in carries the label of its coordinate system (RFC 7946, 4, has other coordinates
-// by prior arrangement; most programs let the user assign the system when they open the file).
+// A site that came in metres has no known place on the earth, so its longitudes and latitudes cannot be told. Such a
+// record is written in the site's own metres, and the member coordinates_in carries the label of its coordinate system
+// (RFC 7946, 4, has other coordinates by prior arrangement; most programs let the user assign the system when they open
+// the file).
 func Overlay(w io.Writer, rec *layout.Record) error {
 	if err := check(rec); err != nil {
 		return err

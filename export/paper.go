@@ -17,7 +17,8 @@ type paper struct {
 	hatchStep     float64
 }
 
-// The two sheets. Text on both can be read at arm's length in print; sizes are those of ISO 3098 (1.8, 2.5, 3.5, 5, 7 mm capitals).
+// The two sheets. Text on both can be read at arm's length in print; sizes are those of ISO 3098 (1.8, 2.5, 3.5, 5, 7 mm
+// capitals).
 var (
 	paperA3 = paper{name: "A3", w: 420, h: 297, margin: 8, column: 98, gap: 4, text: 2.5, small: 2.15, head: 3.1, title: 4.6,
 		hair: 0.1, fine: 0.18, medium: 0.3, heavy: 0.5, widest: 1.3, hatchStep: 2}
@@ -26,10 +27,12 @@ var (
 )
 
 // scales are the denominators that a drawing may have: those that scale rulers have, and their tens.
-var scales = []float64{5, 10, 20, 25, 50, 75, 100, 125, 200, 250, 300, 400, 500, 750, 1000, 1250, 2000, 2500, 5000, 10000, 20000, 25000, 50000, 100000,
+var scales = []float64{5, 10, 20, 25, 50, 75, 100, 125, 200, 250, 300, 400, 500, 750, 1000, 1250, 2000, 2500, 5000, 10000, 20000, 25000,
+	50000, 100000,
 	200000, 500000, 1000000}
 
-// largestOnA3 is the smallest scale that an A3 sheet is used for: below 1:100 the joints of a roof can no longer be told apart there.
+// largestOnA3 is the smallest scale that an A3 sheet is used for: below 1:100 the joints of a roof can no longer be told
+// apart there.
 const largestOnA3 = 100
 
 // axonometricSlack is how many times smaller than the plan the axonometric view may be.
@@ -38,7 +41,8 @@ const axonometricSlack = 4
 // sizes are what the four views show, m.
 type sizes struct{ plan, long, end, axo extent }
 
-// arrangement says where the views are on a sheet. The boxes are for the drawings alone; words and dimensions have their room around them.
+// arrangement says where the views are on a sheet. The boxes are for the drawings alone; words and dimensions have their
+// room around them.
 type arrangement struct {
 	scale, axoScale      float64 // denominators
 	plan, long, end, axo box
@@ -108,8 +112,9 @@ func (p paper) inner(b box, below float64) box {
 	return box{b.x0 + roomLeft*p.text, b.y0 + roomTop*p.text, b.x1 - roomRight*p.text, b.y1 - below*p.text}
 }
 
-// sideBySide has the plan over the long elevation on the left, the axonometric view over the end elevation on the right. In this and the
-// other ways to place the views spare is the height in mm that the axonometric view does not need; it goes to all rows.
+// sideBySide has the plan over the long elevation on the left, the axonometric view over the end elevation on the right.
+// In this and the other ways to place the views spare is the height in mm that the axonometric view does not need; it
+// goes to all rows.
 func (p paper) sideBySide(s sizes, scale, _ float64) (a arrangement, ok bool) {
 	area := p.area()
 	pw, ph := p.cell(s.plan, scale, roomUnder)
@@ -138,11 +143,13 @@ func (p paper) threeRows(s sizes, scale, spare float64) (a arrangement, ok bool)
 	x := area.x0 + pw + (area.w()-pw-ew)/3
 	y0 := area.y0 + ph + spare/3
 	y1 := y0 + lh + spare/3
-	return arrangement{scale: scale, plan: p.inner(box{area.x0, area.y0, x, y0}, roomUnder), long: p.inner(box{area.x0, y0, x, y1}, roomBelow),
+	return arrangement{scale: scale,
+		plan: p.inner(box{area.x0, area.y0, x, y0}, roomUnder), long: p.inner(box{area.x0, y0, x, y1}, roomBelow),
 		end: p.inner(box{x, y0, area.x1, y1}, roomBelow), axo: p.inner(box{area.x0, y1, area.x1, area.y1}, roomBelow)}, true
 }
 
-// stacked has the plan and the long elevation over the full width, and under them the axonometric view with the end elevation on its right.
+// stacked has the plan and the long elevation over the full width, and under them the axonometric view with the end
+// elevation on its right.
 func (p paper) stacked(s sizes, scale, spare float64) (a arrangement, ok bool) {
 	area := p.area()
 	pw, ph := p.cell(s.plan, scale, roomUnder)
@@ -155,7 +162,8 @@ func (p paper) stacked(s sizes, scale, spare float64) (a arrangement, ok bool) {
 	y0 := area.y0 + ph + spare/3
 	y1 := y0 + lh + spare/3
 	x := area.x1 - ew
-	return arrangement{scale: scale, plan: p.inner(box{area.x0, area.y0, area.x1, y0}, roomUnder), long: p.inner(box{area.x0, y0, area.x1, y1}, roomBelow),
+	return arrangement{scale: scale,
+		plan: p.inner(box{area.x0, area.y0, area.x1, y0}, roomUnder), long: p.inner(box{area.x0, y0, area.x1, y1}, roomBelow),
 		end: p.inner(box{x, y1, area.x1, area.y1}, roomBelow), axo: p.inner(box{area.x0, y1, x, area.y1}, roomBelow)}, true
 }
 
@@ -172,6 +180,7 @@ func (p paper) fourRows(s sizes, scale, spare float64) (a arrangement, ok bool) 
 	y1 := y0 + lh + spare/4
 	y2 := area.y1 - eh - spare/4
 	x := area.x0 + (area.w()-pw)/2
-	return arrangement{scale: scale, plan: p.inner(box{area.x0, area.y0, area.x1, y0}, roomUnder), long: p.inner(box{area.x0, y0, area.x1, y1}, roomBelow),
+	return arrangement{scale: scale,
+		plan: p.inner(box{area.x0, area.y0, area.x1, y0}, roomUnder), long: p.inner(box{area.x0, y0, area.x1, y1}, roomBelow),
 		axo: p.inner(box{area.x0, y1, area.x1, y2}, roomBelow), end: p.inner(box{x, y2, area.x1, area.y1}, roomBelow), endOnLeft: true}, true
 }

@@ -74,8 +74,8 @@ func (p placer) line(vs []geom.Vec) geometry {
 	return geometry{"MultiLineString", parts}
 }
 
-// polygon is a polygon (the first ring is the outside) in the coordinates of the file, in parts where it crosses the antimeridian; false if no ring
-// has three corners.
+// polygon is a polygon (the first ring is the outside) in the coordinates of the file, in parts where it crosses the
+// antimeridian; false if no ring has three corners.
 func (p placer) polygon(rings [][]geom.Vec, flat bool) (geometry, bool) {
 	var clean [][]geom.Vec
 	for i, ring := range rings {

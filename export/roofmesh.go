@@ -7,14 +7,14 @@ import (
 	"boughwork/geom"
 )
 
-// The record has the outline of a roof and its nodes, but not its surface. For the drawing the surface is the Delaunay triangulation
-// of the nodes and the corners in plan, without the triangles outside the outline.
+// The record has the outline of a roof and its nodes, but not its surface. For the drawing the surface is the Delaunay
+// triangulation of the nodes and the corners in plan, without the triangles outside the outline.
 
 const (
 	// meshLimit bounds the places of a mesh: beyond, the outline alone is drawn. The method takes their number squared.
 	meshLimit = 6000
-	// meshJitter moves places by that share of the extent before they are triangulated, so that no four lie on one circle as on every
-	// grid; far less than can be drawn, far more than rounding.
+	// meshJitter moves places by that share of the extent before they are triangulated, so that no four lie on one circle
+	// as on every grid; far less than can be drawn, far more than rounding.
 	meshJitter = 1e-7
 	// sliver is the height of a triangle as a share of its longest side under which it is left out: along the outline the
 	// jitter makes such triangles between places in line.
@@ -72,8 +72,8 @@ func thin(a, b, c geom.Vec) bool {
 	return math.Abs(ringArea([]geom.Vec{a, b, c}))*2 < sliver*longest*longest
 }
 
-// delaunay triangulates places in plan (Bowyer 1981 and Watson 1981: each place takes away the triangles whose circle it lies in,
-// and is joined to the border of the hole).
+// delaunay triangulates places in plan (Bowyer 1981 and Watson 1981: each place takes away the triangles whose circle it
+// lies in, and is joined to the border of the hole).
 func delaunay(places []geom.Vec) []triangle {
 	e := emptyExtent()
 	for _, p := range places {

@@ -108,7 +108,7 @@ func (d *drawing) cases(k *column, most int) {
 				continue
 			}
 			if written >= most-1 && left > 1 || k.room(p.small) < 2 && left > 1 {
-				k.line(p.small, field{x: k.x0, text: trimmed(fmt.Sprintf("and %d more in cases.csv", left), k.width(), p.small, false), writing: writing{colour: greyColour}})
+				k.rest(left, "cases.csv")
 				return
 			}
 			w := writing{colour: greyColour}
@@ -122,7 +122,15 @@ func (d *drawing) cases(k *column, most int) {
 	}
 }
 
-// feet lists the supports with their largest reactions, in the order of their marks; the most loaded ones if there is no room for all.
+// rest says how many lines had no room, and where they are.
+func (k *column) rest(n int, file string) {
+	size := k.d.paper.small
+	words := trimmed(fmt.Sprintf("and %d more in %s", n, file), k.width(), size, false)
+	k.line(size, field{x: k.x0, text: words, writing: writing{colour: greyColour}})
+}
+
+// feetTable lists the supports with their largest reactions, in the order of their marks; the most loaded ones if there is no
+// room for all.
 func (d *drawing) feetTable(k *column) {
 	p := d.paper
 	feet := make([]drawnFoot, 0, len(d.m.feet))
@@ -148,16 +156,15 @@ func (d *drawing) feetTable(k *column) {
 		return k.line(p.small, fields...)
 	}
 	row(greyColour, "foot", "down", "uplift", "sideways")
-	if n := k.room(p.small); len(feet) > n {
-		kept := append([]drawnFoot(nil), feet...)
-		sort.SliceStable(kept, func(i, j int) bool { return kept[i].support.down.KN > kept[j].support.down.KN })
-		kept = kept[:max(0, n-1)]
-		defer func(left int) {
-			k.line(p.small, field{x: k.x0, text: trimmed(fmt.Sprintf("and %d more in reactions.csv", left), w, p.small, false), writing: writing{colour: greyColour}})
-		}(len(feet) - len(kept))
-		feet = kept
+	left := 0
+	if n := max(0, k.room(p.small)-1); len(feet) > n+1 {
+		sort.SliceStable(feet, func(i, j int) bool { return feet[i].support.down.KN > feet[j].support.down.KN })
+		left, feet = len(feet)-n, feet[:n]
 	}
 	for _, f := range feet {
 		row(inkColour, f.mark, figures(f.support.down.KN, 4), figures(f.support.uplift.KN, 4), figures(f.support.sideways.KN, 4))
+	}
+	if left > 0 {
+		k.rest(left, "reactions.csv")
 	}
 }

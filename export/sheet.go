@@ -8,12 +8,12 @@ import (
 	"boughwork/ground/layout"
 )
 
-// Sheet writes sheet.svg: a drawing on A3 or A1 in landscape, in mm, with the plan over the site, two elevations and an axonometric
-// view, each at a stated scale, and a column of words: legend, numbers, cases, feet, cautions and title.
+// Sheet writes sheet.svg: a drawing on A3 or A1 in landscape, in mm, with the plan over the site, two elevations and an
+// axonometric view, each at a stated scale, and a column of words: legend, numbers, cases, feet, cautions and title.
 //
-// The plan is turned so that the long side of the roof lies along the sheet; an arrow shows north. Elevations look at the long and
-// the short side. The width of a bar grows with the diameter of a solid bar of its area. Where no layout exists the sheet shows the motion that
-// proves it in place of bars.
+// The plan is turned so that the long side of the roof lies along the sheet; an arrow shows north. Elevations look at the
+// long and the short side. The width of a bar grows with the diameter of a solid bar of its area. Where no layout exists
+// the sheet shows the motion that proves it in place of bars.
 func Sheet(w io.Writer, rec *layout.Record) error {
 	if err := check(rec); err != nil {
 		return err
@@ -92,8 +92,8 @@ func (d *drawing) frame() {
 	d.c.line(pt{x, f.y0}, pt{x, f.y1}, stroke(inkColour, p.fine))
 }
 
-// viewTitle writes the name and the scale of a view under it; below is the distance in sizes of text from the window. What has no room
-// beside the name in the cell of the view goes on a line of its own.
+// viewTitle writes the name and the scale of a view under it; below is the distance in sizes of text from the window.
+// What has no room beside the name in the cell of the view goes on a line of its own.
 func (d *drawing) viewTitle(v view, cell box, name, words string, below float64) {
 	p := d.paper
 	at := pt{v.window.x0, v.window.y1 + below*p.text}

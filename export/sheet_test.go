@@ -144,8 +144,8 @@ func checkTexts(t *testing.T, name string, d *drawing) {
 	}
 }
 
-// Whoever measures on the sheet and multiplies by the scale finds the size of the roof, in the plan and both elevations, also of a
-// site that is turned.
+// Whoever measures on the sheet and multiplies by the scale finds the size of the roof, in the plan and both elevations,
+// also of a site that is turned.
 func TestSheetIsToScale(t *testing.T) {
 	for _, turn := range []float64{0, 23, 90, -45} {
 		d := draw(canopy(turn))
@@ -216,6 +216,37 @@ func TestSheetDrawsEveryBar(t *testing.T) {
 	// Light cores: one on every line in tension, broken on every line of both kinds.
 	if n := strings.Count(b.String(), `stroke-linecap="butt" stroke-dasharray`); n != views+legend {
 		t.Errorf("%d broken cores, want %d", n, views+legend)
+	}
+}
+
+// Thousands of bars that weigh next to nothing do not hide the others: some are hairlines, many are left out, and the
+// legend says so.
+func TestSheetFaintBars(t *testing.T) {
+	for _, c := range []struct {
+		bars  int
+		drawn bool
+		words string
+	}{{100, true, "the 100 thinnest bars, 0.1"}, {700, false, "not drawn: the 700 thinnest bars, 0.1"}} {
+		rec := tripod()
+		volume := Summarise(rec).VolumeM3
+		for range c.bars {
+			b := layout.RecordBar{Nodes: [2]int{0, 4}, ForceKN: []float64{-1e-4, -1e-4}}
+			b.AreaM2 = 0.001 * volume / lengthOf(rec, b) / float64(c.bars)
+			rec.Bars = append(rec.Bars, b)
+		}
+		var b bytes.Buffer
+		if err := Sheet(&b, rec); err != nil {
+			t.Fatal(err)
+		}
+		if got := strings.Count(b.String(), `stroke-opacity="0.35"`); c.drawn && got != 4*c.bars+1 || !c.drawn && got != 0 {
+			t.Errorf("%d thin bars: %d hairlines", c.bars, got)
+		}
+		if !strings.Contains(b.String(), c.words) {
+			t.Errorf("%d thin bars: the legend does not say %q", c.bars, c.words)
+		}
+	}
+	if m := newModel(tripod()); m.faint != 0 {
+		t.Errorf("%d bars of a tripod are faint", m.faint)
 	}
 }
 

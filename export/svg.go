@@ -72,7 +72,8 @@ func (c *canvas) open(attributes string) { fmt.Fprintf(&c.b, "<g %s>\n", attribu
 // openClipped begins a group of which only what lies in the box shows.
 func (c *canvas) openClipped(b box, attributes string) {
 	c.clips++
-	fmt.Fprintf(&c.b, `<clipPath id="clip%d"><rect x="%s" y="%s" width="%s" height="%s"/></clipPath>`+"\n", c.clips, c.n(b.x0), c.n(b.y0), c.n(b.w()), c.n(b.h()))
+	fmt.Fprintf(&c.b, `<clipPath id="clip%d"><rect x="%s" y="%s" width="%s" height="%s"/></clipPath>`+"\n",
+		c.clips, c.n(b.x0), c.n(b.y0), c.n(b.w()), c.n(b.h()))
 	c.open(fmt.Sprintf(`clip-path="url(#clip%d)" %s`, c.clips, attributes))
 }
 

@@ -36,9 +36,9 @@ func BarsCSV(w io.Writer, rec *layout.Record) error {
 	return t.close()
 }
 
-// JointsCSV writes joints.csv: one line for every node that the layout uses. Metres are local (x east, y north, z up); longitude
-// and latitude (WGS 84) are empty for a site that came in metres. The column held names the directions in which a support holds the node;
-// deck says yes where the diaphragm moves it in plan.
+// JointsCSV writes joints.csv: one line for every node that the layout uses. Metres are local (x east, y north, z up);
+// longitude and latitude (WGS 84) are empty for a site that came in metres. The column held names the directions in which
+// a support holds the node; deck says yes where the diaphragm moves it in plan.
 func JointsCSV(w io.Writer, rec *layout.Record) error {
 	if err := check(rec); err != nil {
 		return err
@@ -92,9 +92,10 @@ func heldWord(fixed [3]bool) string {
 	return s.String()
 }
 
-// ReactionsCSV writes reactions.csv: the force of every support on the structure in every case (up is positive), and after the supports of a
-// case four lines that close its equilibrium: the sum of reactions, the applied loads, the weight of the bars, and what remains of all
-// three, which is nothing but rounding. Moments are about the local origin (0, 0, 0), right-handed. Roof nodes of a held deck are supports too.
+// ReactionsCSV writes reactions.csv: the force of every support on the structure in every case (up is positive), and
+// after the supports of a case four lines that close its equilibrium: the sum of reactions, the applied loads, the weight
+// of the bars, and what remains of all three, which is nothing but rounding. Moments are about the local origin (0, 0,
+// 0), right-handed. Roof nodes of a held deck are supports too.
 func ReactionsCSV(w io.Writer, rec *layout.Record) error {
 	if err := check(rec); err != nil {
 		return err

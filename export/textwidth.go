@@ -2,8 +2,9 @@ package export
 
 import "strings"
 
-// emWidths are the widths of the characters from space to tilde in thousandths of an em, those of the widest of the common sans-serif faces
-// (measured on DejaVu Sans): what fits with these fits with the faces that a reader is likely to have.
+// emWidths are the widths of the characters from space to tilde in thousandths of an em, those of the widest of the
+// common sans-serif faces (measured on DejaVu Sans): what fits with these fits with the faces that a reader is likely to
+// have.
 var emWidths = [95]uint16{
 	318, 401, 460, 838, 636, 950, 780, 275, 390, 390, 500, 838, 318, 361, 318, 337, // space to /
 	636, 636, 636, 636, 636, 636, 636, 636, 636, 636, 337, 337, 838, 838, 838, 531, // 0 to ?

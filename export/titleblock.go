@@ -4,7 +4,8 @@ import (
 	"fmt"
 )
 
-// words writes the column on the right: from the top the legend and the numbers, from the bottom the title block and the cautions.
+// words writes the column on the right: from the top the legend and the numbers, from the bottom the title block and the
+// cautions.
 func (d *drawing) words() {
 	p := d.paper
 	inset := 1.2 * p.text
