@@ -62,7 +62,7 @@ func (d *drawing) widthKey(k *column) {
 			area = roundFigures(area*share, 1)
 		}
 		words := fmt.Sprintf("%s cm², solid round %s mm", short(roundFigures(area*cm2PerM2, 3), 6), short(roundFigures(solidDiameter(area), 3), 3))
-		if words == last {
+		if words == last || area < d.style.clampedArea() {
 			continue
 		}
 		last = words
