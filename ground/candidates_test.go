@@ -101,7 +101,7 @@ func coveredBy(ps []geom.Prism, a, b geom.Vec, depth float64) bool {
 func convexPrism(rng *rand.Rand, reach float64) geom.Prism {
 	n := 3 + rng.IntN(5)
 	cx, cy := reach*rng.Float64(), reach*rng.Float64()
-	rx, ry, turn := 0.2+reach/4*rng.Float64(), 0.2+reach/4*rng.Float64(), rng.Float64()
+	rx, ry, turn := reach*(0.02+0.25*rng.Float64()), reach*(0.02+0.25*rng.Float64()), rng.Float64()
 	sign := float64(2*rng.IntN(2) - 1)
 	var ring []geom.Vec
 	for i := range n {
@@ -115,7 +115,7 @@ func convexPrism(rng *rand.Rand, reach float64) geom.Prism {
 // randomRules fills a structure with nodes, among them some that lie on or beside bars, and with rules.
 func randomRules(seed uint64) *ground.Structure {
 	rng := rand.New(rand.NewPCG(seed, 99))
-	const reach = 10
+	reach := []float64{10, 10, 0.1}[rng.IntN(3)] // in a small cloud the tolerance reaches into many cells of the search
 	s := &ground.Structure{}
 	flat := rng.IntN(4)
 	for range 24 {
@@ -135,15 +135,15 @@ func randomRules(seed uint64) *ground.Structure {
 			continue
 		}
 		d := ground.ThroughNode * []float64{0, 0.5, 0.9, 1.1, 2}[rng.IntN(5)]
-		s.Nodes = append(s.Nodes, ground.Node{At: a.Add(b.Sub(a).Scale(0.1 + 0.8*rng.Float64())).Add(off.Scale(d / off.Norm()))})
+		s.Nodes = append(s.Nodes, ground.Node{At: a.Add(b.Sub(a).Scale(0.01 + 0.98*rng.Float64())).Add(off.Scale(d / off.Norm()))})
 	}
 	s.Rules.RoofBars = ground.RoofBars(rng.IntN(3))
 	s.Rules.RoofFactor = 2
 	if rng.IntN(2) == 0 {
-		s.Rules.MinLength = 2 * rng.Float64()
+		s.Rules.MinLength = 0.2 * reach * rng.Float64()
 	}
 	if rng.IntN(2) == 0 {
-		s.Rules.MaxLength = 5 + 5*rng.Float64()
+		s.Rules.MaxLength = reach * (0.5 + 0.5*rng.Float64())
 	}
 	for range rng.IntN(4) {
 		s.Rules.KeepClear = append(s.Rules.KeepClear, convexPrism(rng, reach))
