@@ -21,11 +21,12 @@ type active struct {
 	pairs []pair
 	base  map[int64]bool
 	in    map[int64]bool
+	once  map[int64]bool // dropped once already: not again, so that no bar comes and goes for ever
 }
 
 // newActive returns the shortest bars around every node.
 func newActive(s *ground.Structure, can *ground.Candidates) *active {
-	a := &active{base: map[int64]bool{}, in: map[int64]bool{}}
+	a := &active{base: map[int64]bool{}, in: map[int64]bool{}, once: map[int64]bool{}}
 	number := nearestInSpace
 	if planar(s) {
 		number = nearestInPlane
@@ -135,8 +136,9 @@ func (a *active) drop(area []float64, price func(i int) float64) {
 	}
 	kept := a.pairs[:0:0]
 	for i, p := range a.pairs {
-		if !a.base[p.key()] && area[i] < dropArea*top && price(i) < dropPrice {
+		if !a.base[p.key()] && !a.once[p.key()] && area[i] < dropArea*top && price(i) < dropPrice {
 			delete(a.in, p.key())
+			a.once[p.key()] = true
 			continue
 		}
 		kept = append(kept, p)

@@ -19,6 +19,8 @@ type study struct {
 	opt    Options
 	result *Result
 	warm   warm
+	order  []int        // cases with loads, by falling cost of the elastic guess
+	letGo  map[int]bool // cases that governed once and were let go
 	rounds int
 	// Interior-point iterations of all rounds of member adding.
 	iterations int

@@ -7,6 +7,7 @@ import (
 	"slices"
 
 	"boughwork/lp"
+	"boughwork/lp/interior"
 )
 
 // A full design: areas that carry every case, with the forces of every case.
@@ -19,120 +20,167 @@ type design struct {
 	feet      []float64 // of the reactions of limited or costed feet
 }
 
-// The share of the target gap that each check of a case against given areas may be off.
-const checkShare = 0.05
+// How cases are added.
+const (
+	// firstCheck is the gap at which the other cases are looked at for the first time: early, since each case that turns
+	// out to govern changes the layout.
+	firstCheck = 3e-2
+	// growShare is the share of the gap that the layout for the governing cases may use; the rest is for the others.
+	growShare = 0.5
+	// completeShare is the share of the gap that the price of one case may be off: what the cases add is the sum over
+	// bars of the largest over cases, so errors add up.
+	completeShare = 1e-3
+	// missingShare is the share of the gap that is for want of cases to which the next layout is solved.
+	missingShare = 0.2
+	// slackShare is the share of the work of all loads below which a case does not govern.
+	slackShare = 1e-6
+)
 
-// firstCheck is the gap at which the other cases are looked at for the first time: early, since each case that turns
-// out to govern changes the layout.
-const firstCheck = 3e-2
-
-// allCases finds the layout for all cases: it solves for those that govern and checks the rest, adding the case that
-// would cost most as long as what it costs does not fit into the gap. The bound for some cases is a bound for all.
-func (st *study) allCases(ctx context.Context, rank []int) (*solved, *design, error) {
+// allCases finds the layout for all cases. It grows a layout for those that govern, makes of its bars a design for all
+// cases (conclude), and lets the displacements of that design say which further case governs: a bound for some cases is a
+// bound for all, so only the cases whose loads do work are needed for it.
+func (st *study) allCases(ctx context.Context) (*solved, *design, error) {
+	rank, err := st.rank(ctx)
+	if err != nil || len(rank) == 0 {
+		return nil, nil, err
+	}
 	governing := rank[:1:1]
+	final := growShare * st.opt.Gap
+	if len(rank) == 1 {
+		final = 0.9 * st.opt.Gap
+	}
+	target := math.Max(final, firstCheck)
 	var from *solved
 	var best *design
-	target := math.Max(firstCheck, st.opt.Gap)
-	if len(rank) == 1 {
-		target = st.opt.Gap
-	}
 	for {
-		v, err := st.grow(ctx, governing, target*goalFor(len(rank) > len(governing)), from)
-		if err != nil || v.sol.Raw || v.sol.Status == lp.NoEquilibrium {
+		v, err := st.grow(ctx, governing, target, from)
+		if err != nil || v.sol.Raw || v.sol.Status == lp.NoEquilibrium || v.sol.Status == lp.Cancelled {
 			return v, best, err
 		}
 		from = v
-		d, cost, err := st.complete(ctx, v, rank)
+		c, err := st.conclude(ctx, v)
 		if err != nil {
 			return v, best, err
 		}
-		if d == nil && v.sol.Status == lp.Optimal && len(cost) > 0 { // a case has no equilibrium: make it govern, and see
-			governing = with(governing, worst(cost))
-			continue
+		if c.design != nil && (best == nil || c.design.objective < best.objective) {
+			best = c.design
 		}
-		if d != nil && (best == nil || d.objective < best.objective) {
-			best = d
+		k := c.governs(governing, st.opt.Gap)
+		if k < 0 && c.stuck >= 0 && !slices.Contains(governing, c.stuck) {
+			k = c.stuck
 		}
-		if v.sol.Status != lp.Optimal || best == nil {
-			return v, best, nil
-		}
-		gap := (best.objective - v.bestBound) / best.objective
-		st.report(v)
 		switch {
-		case best.objective <= 0 || gap <= st.opt.Gap:
+		case best != nil && (best.objective <= 0 || (best.objective-v.bestBound)/best.objective <= st.opt.Gap):
 			return v, best, nil
-		case st.rounds >= st.opt.MaxRounds:
+		case c.hopeless >= 0 && !slices.Contains(governing, c.hopeless): // no bars carry it: let it prove that
+			governing = []int{c.hopeless}
+			from = nil
+		case ctx.Err() != nil:
+			v.sol.Status = lp.Cancelled
+			return v, best, nil
+		case v.sol.Status != lp.Optimal:
+			return v, best, nil
+		case st.rounds >= st.opt.MaxRounds || final < 1e-3*st.opt.Gap:
 			v.sol.Status = lp.IterationLimit
 			return v, best, nil
+		case k >= 0:
+			governing = with(st.withoutSlack(v, governing), k)
+			missing := 1 - v.bestBound/c.layout.sol.Objective
+			target = math.Max(final, math.Min(firstCheck, missingShare*missing))
+		case target > final:
+			target = final
+		default:
+			final /= 4
+			target = final
 		}
-		if k := worst(cost); k >= 0 && cost[k] > 0.3*gap*best.objective {
-			governing = with(governing, k)
-			target = math.Max(st.opt.Gap, math.Min(target, firstCheck))
-			continue
-		}
-		target = math.Max(math.Min(target/4, gap/4), st.opt.Gap/16)
 	}
 }
 
-// goalFor leaves room in the gap for what the cases that do not govern add.
-func goalFor(others bool) float64 {
-	if others {
-		return 0.7
-	}
-	return 1
-}
-
-// worst returns the key with the largest value, the smallest of equals, or -1.
-func worst(cost map[int]float64) int {
-	k := -1
-	for c, v := range cost {
-		if k < 0 || v > cost[k] || v == cost[k] && c < k {
-			k = c
-		}
-	}
-	return k
-}
-
+// with returns the cases and one more, ascending.
 func with(cases []int, k int) []int {
 	out := append(slices.Clone(cases), k)
 	slices.Sort(out)
 	return out
 }
 
-// rank orders the cases by the volume that each alone needs on the base bars, the largest first, and leaves out those
-// without loads.
-func (st *study) rank(ctx context.Context) ([]int, error) {
-	type one struct {
-		k      int
-		volume float64
+// work returns the share that the loads of each case have in the work of all on the displacements of v.
+func (v *solved) work() []float64 {
+	work := make([]float64, len(v.cases))
+	total := 0.0
+	for i, c := range v.problem.Cases {
+		for r, f := range c.Load {
+			work[i] += f * v.sol.Displacement[i][r]
+		}
+		total += math.Abs(work[i])
 	}
-	var all []one
-	for k, c := range st.s.Cases {
-		if len(c.Loads) == 0 && c.Gravity == 0 {
-			continue
-		}
-		st.say("cases", float64(k)/float64(len(st.s.Cases)), nil)
-		sol, err := st.opt.Solver.Solve(ctx, st.prog.problem(st.active.pairs, []int{k}), nil, lp.Settings{Gap: 0.1})
-		if err != nil {
-			return nil, err
-		}
-		v := sol.Objective
-		if sol.Status == lp.NoEquilibrium {
-			v = math.Inf(1)
-		}
-		all = append(all, one{k, v})
-		if ctx.Err() != nil {
-			break
-		}
+	for i := range work {
+		work[i] = math.Abs(work[i]) / math.Max(total, 1e-300)
 	}
-	slices.SortStableFunc(all, func(a, b one) int { return cmp.Compare(b.volume, a.volume) })
-	var out []int
-	for _, o := range all {
-		out = append(out, o.k)
-	}
-	return out, nil
+	return work
 }
 
-func (st *study) length(p pair) float64 {
-	return st.s.Nodes[p.j].At.Sub(st.s.Nodes[p.i].At).Norm()
+// withoutSlack lets go of the cases whose loads do no work on the displacements: the layout carries them anyway. A case
+// is let go once at most, so that none comes and goes for ever.
+func (st *study) withoutSlack(v *solved, governing []int) []int {
+	var out []int
+	for i, w := range v.work() {
+		k := governing[i]
+		if w < slackShare && !st.letGo[k] {
+			st.letGo[k] = true
+			continue
+		}
+		out = append(out, k)
+	}
+	return out
+}
+
+// rank orders the cases by the volume that their elastic forces need, the largest first, and leaves out those without
+// loads.
+func (st *study) rank(ctx context.Context) ([]int, error) {
+	var cases []int
+	for k, c := range st.s.Cases {
+		if len(c.Loads) > 0 || c.Gravity != 0 && st.weighs() {
+			cases = append(cases, k)
+		}
+	}
+	guess, err := st.elasticCost(ctx, cases)
+	if err != nil {
+		return nil, err
+	}
+	sortByCost(cases, guess)
+	st.order = cases
+	return cases, nil
+}
+
+// sortByCost sorts cases by falling cost, the first of equals first.
+func sortByCost(cases []int, cost map[int]float64) {
+	slices.SortStableFunc(cases, func(a, b int) int { return cmp.Compare(cost[b], cost[a]) })
+}
+
+// elasticCost guesses what each case costs: the volume under the forces of an elastic structure of the active bars.
+func (st *study) elasticCost(ctx context.Context, cases []int) (map[int]float64, error) {
+	p := st.prog.problem(st.active.pairs, cases)
+	n := len(st.active.pairs)
+	stiff := make([]float64, p.Bars.Len())
+	for i := range stiff {
+		stiff[i] = 1
+		if i < n {
+			stiff[i] = 1 / p.Bars.Cost[i]
+		}
+	}
+	force, err := interior.Elastic(ctx, p, stiff)
+	if err != nil {
+		if ctx.Err() != nil {
+			return map[int]float64{}, nil
+		}
+		return nil, err
+	}
+	m := st.s.Material
+	out := make(map[int]float64, len(cases))
+	for c, k := range cases {
+		for i := range n {
+			out[k] += p.Bars.Cost[i] * need(force[c][i], m.Tension, m.Compression)
+		}
+	}
+	return out, nil
 }

@@ -5,49 +5,107 @@ import (
 	"math"
 	"slices"
 
+	"boughwork/ground"
 	"boughwork/lp"
 )
 
-// complete checks every case that v was not solved for against its areas, and returns a design that carries all cases
-// and the cost of strengthening for each. The design is nil if a case cannot be carried by the bars of the program; its
-// cost is then infinite.
-func (st *study) complete(ctx context.Context, v *solved, rank []int) (*design, map[int]float64, error) {
-	n, kept := len(st.active.pairs), len(st.s.Kept)
-	d := &design{pairs: slices.Clone(st.active.pairs), area: slices.Clone(v.sol.Area[:n]), feet: slices.Clone(v.sol.Area[n+kept:]),
-		force: make([][]float64, len(st.s.Cases))}
-	for i, k := range v.cases {
-		d.force[k] = v.sol.Force[i]
+// complete finds forces for every case in the areas of t, which it strengthens a little where a case asks for it, case
+// after case. It returns the design; or nil and cases that ask for too much, which are then moved to the front of the
+// order: what failed once is likely to fail again. gap is that of the design.
+//
+// Where bars weigh, what one case adds weighs on all others. The cases are then gone through again, all of them, until
+// what is added weighs nothing to speak of.
+func (st *study) complete(ctx context.Context, t trimmed, gap float64) (*design, []int, error) {
+	n, kept := len(t.pairs), len(st.s.Kept)
+	d := &design{pairs: t.pairs, area: slices.Clone(t.sol.Area[:n]), feet: slices.Clone(t.sol.Area[n+kept:]), force: make([][]float64, len(st.s.Cases))}
+	for i, k := range t.cases {
+		d.force[k] = slices.Clone(t.sol.Force[i])
 	}
-	cost := map[int]float64{}
-	area, feet := slices.Clone(d.area), slices.Clone(d.feet)
-	for done, k := range rank {
-		if d.force[k] != nil {
+	budget := strengthenShare * gap * t.sol.Objective
+	rest := make([]int, 0, len(st.order))
+	for _, k := range st.order {
+		if d.force[k] == nil {
+			rest = append(rest, k)
+		}
+	}
+	for pass := range weightPasses {
+		before := st.weight(d)
+		failed, err := st.pass(ctx, t, d, rest, &budget)
+		if err != nil || ctx.Err() != nil {
+			return nil, nil, err
+		}
+		if failed != nil {
+			for _, k := range slices.Backward(failed) {
+				i := slices.Index(st.order, k)
+				st.order = append([]int{k}, slices.Delete(slices.Clone(st.order), i, i+1)...)
+			}
+			return nil, failed, nil
+		}
+		if !st.weighs() || st.weight(d)-before <= weightShare*st.topLoad() {
+			st.value(d)
+			return d, nil, nil
+		}
+		if pass == 0 {
+			rest = st.order
+		}
+	}
+	return nil, nil, nil
+}
+
+// strengthenShare is the share of the gap that strengthening may cost, over all cases. pass looks for one case that is
+// not carried, and one more for so many that are in the program already. Cases are gone through weightPasses times at
+// most, until a pass adds no more weight than weightShare of the largest load: a fifth of what the record promises.
+const (
+	strengthenShare = 0.4
+	failedShare     = 3
+	weightPasses    = 8
+	weightShare     = 2e-9
+)
+
+// pass finds forces for the given cases in the areas of d, strengthening them within the budget. It returns the cases
+// for which that does not do.
+func (st *study) pass(ctx context.Context, t trimmed, d *design, cases []int, budget *float64) ([]int, error) {
+	var failed []int
+	for done, k := range cases {
+		st.say("cases", float64(done)/float64(len(cases)), t.solved)
+		q, err := st.carry(ctx, d, k)
+		if err == nil && q == nil && ctx.Err() == nil {
+			var cost float64
+			q, cost, err = st.strengthen(ctx, d, k, *budget)
+			*budget -= cost
+		}
+		if err != nil || ctx.Err() != nil {
+			return nil, err
+		}
+		if q == nil {
+			if failed = append(failed, k); len(failed) > len(t.cases)/failedShare {
+				return failed, nil
+			}
 			continue
 		}
-		st.say("cases", float64(done)/float64(len(rank)), v)
-		r, err := st.strengthen(ctx, v, d, k)
-		switch {
-		case err != nil || ctx.Err() != nil:
-			return nil, cost, err
-		case r == nil:
-			return nil, map[int]float64{k: math.Inf(1)}, nil
-		}
-		d.force[k], cost[k] = r.force, r.cost
-		for i := range area {
-			area[i] = math.Max(area[i], r.area[i])
-		}
-		for i := range feet {
-			feet[i] = math.Max(feet[i], r.feet[i])
+		d.force[k] = q
+	}
+	return failed, nil
+}
+
+// weight returns the weight of the bars of a design at gravity factor 1, N.
+func (st *study) weight(d *design) float64 {
+	w := 0.0
+	for i, a := range d.area {
+		w += a * st.length(d.pairs[i]) * st.s.Material.Density * ground.Gravity
+	}
+	return w
+}
+
+// topLoad returns the largest nodal load of any case, N.
+func (st *study) topLoad() float64 {
+	top := 0.0
+	for _, c := range st.s.Cases {
+		for _, l := range c.Loads {
+			top = math.Max(top, l.Force.Norm())
 		}
 	}
-	d.area, d.feet = area, feet
-	if len(cost) > 0 && st.weighs() {
-		if ok, err := st.balanceWeight(ctx, d, rank); err != nil || !ok {
-			return nil, cost, err
-		}
-	}
-	st.value(d)
-	return d, cost, nil
+	return top
 }
 
 // value sums the objective and the volume of a design.
@@ -64,45 +122,147 @@ func (st *study) value(d *design) {
 	}
 }
 
-// stronger is what one case asks: its forces over pairs, kept members and feet, and the areas that carry them.
-type stronger struct {
-	cost       float64
-	force      []float64
-	area, feet []float64
+func (st *study) length(p pair) float64 {
+	return st.s.Nodes[p.j].At.Sub(st.s.Nodes[p.i].At).Norm()
+}
+
+// carry returns forces for case k in a design of given areas, over its pairs, kept members and feet; nil if there are
+// none.
+func (st *study) carry(ctx context.Context, d *design, k int) ([]float64, error) {
+	p := st.prog.problem(d.pairs, []int{k})
+	b := &p.Bars
+	n, kept := len(d.pairs), len(st.s.Kept)
+	for i := range b.Len() {
+		switch f := i - n - kept; {
+		case i < n:
+			b.Fixed[i], b.Upper[i] = true, d.area[i]
+		case f >= 0 && !b.Fixed[i]:
+			b.Fixed[i], b.Upper[i] = true, d.feet[f]
+		}
+	}
+	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: 1e-2, Iterations: carryIterations})
+	if err != nil || sol.Raw || sol.Status != lp.Optimal {
+		return nil, err
+	}
+	return sol.Force[0], nil
+}
+
+// carryIterations is enough for any case that given areas carry with a little to spare; one that they carry just so is
+// better made to govern.
+const carryIterations = 40
+
+// strengthen finds the cheapest areas to add to d so that case k is carried too, adds them and returns the forces and the
+// cost, exact to a small share of the budget: minimise sum c s subject to equilibrium and -sc (a + s) <= q <= st (a + s).
+// Each bar is there twice, once with its area at no cost and once to be bought; so is each foot that costs. It returns
+// nil if the bars of d cannot carry the case within the budget. What is bought does not weigh here: complete sees to that.
+func (st *study) strengthen(ctx context.Context, d *design, k int, budget float64) ([]float64, float64, error) {
+	p := st.prog.problem(d.pairs, []int{k})
+	twin := st.twins(p, d.pairs, d.area, d.feet)
+	clear(p.Bars.H[:p.Bars.Ptr[len(d.pairs)]])
+	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: strengthenGap, Absolute: strengthenFloor * budget})
+	if err != nil || sol.Raw || sol.Status == lp.NoEquilibrium || sol.Objective > budget {
+		return nil, 0, err
+	}
+	base := p.Bars.Len() - len(twin)
+	q := slices.Clone(sol.Force[0][:base])
+	for j, i := range twin {
+		q[i] += sol.Force[0][base+j]
+	}
+	n, kept, m := len(d.pairs), len(st.s.Kept), st.s.Material
+	for i := range d.area {
+		d.area[i] = math.Max(d.area[i], need(q[i], m.Tension, m.Compression))
+	}
+	for i := range d.feet {
+		if f := &st.prog.feet; !f.Fixed[i] {
+			d.feet[i] = math.Max(d.feet[i], need(q[n+kept+i], f.Tension[i], f.Compression[i]))
+		}
+	}
+	return q, sol.Objective, nil
+}
+
+// strengthenGap is how exactly the cost of strengthening is found, as a share of itself; strengthenFloor of the budget.
+const (
+	strengthenGap   = 1e-2
+	strengthenFloor = 1e-4
+)
+
+// twins adds to p a bar of fixed area beside every bar of d and every costed foot, and returns which they belong to.
+func (st *study) twins(p *lp.Problem, pairs []pair, area, feet []float64) []int {
+	n, kept := p.Bars.Len()-len(st.s.Kept)-st.prog.feet.Len(), len(st.s.Kept)
+	b := &p.Bars
+	top := slices.Max(append([]float64{0}, area...))
+	var twin []int
+	add := func(i int, a float64) {
+		lo, hi := b.Ptr[i], b.Ptr[i+1]
+		b.Add(b.Row[lo:hi], b.B[lo:hi], b.H[lo:hi], b.Tension[i], b.Compression[i], 0, a, true)
+		twin = append(twin, i)
+	}
+	for i := range pairs {
+		if area[i] > freeArea*top {
+			add(i, area[i])
+		}
+	}
+	for i, a := range feet {
+		if !st.prog.feet.Fixed[i] && a > 0 {
+			add(n+kept+i, a)
+		}
+	}
+	return twin
 }
 
 // Bars below this share of the largest area are not worth a twin.
-const freeArea = 1e-6
+const freeArea = 1e-7
 
-// strengthen finds the cheapest areas to add to d so that case k is carried too: minimise sum c s subject to
-// equilibrium and -sc (a + s) <= q <= st (a + s). Each bar is there twice, once with its area at no cost and once to be
-// bought; so is each foot that costs. It returns nil if the bars cannot carry the case at any price.
-func (st *study) strengthen(ctx context.Context, v *solved, d *design, k int) (*stronger, error) {
-	p := st.prog.problem(st.active.pairs, []int{k})
-	twin := st.twins(p, d, false)
-	set := lp.Settings{Gap: 1e-2, Absolute: checkShare * st.opt.Gap * math.Max(v.sol.Objective, 1e-300)}
+// wanted returns the bars that case k would have, at the least cost, beside the areas of t: minimise sum c s subject to
+// equilibrium and -sc (a + s) <= q <= st (a + s), over all active bars. Each bar of t is there twice, once with its area
+// at no cost and once to be bought. It is not ok if the active bars cannot carry the case at any price.
+func (st *study) wanted(ctx context.Context, t trimmed, k int) (bars []pair, ok bool, err error) {
+	pairs := union(st.active.pairs, t.pairs)
+	n, kept := len(t.pairs), len(st.s.Kept)
+	at := map[int64]float64{}
+	for i, q := range t.pairs {
+		at[q.key()] = t.sol.Area[i]
+	}
+	area := make([]float64, len(pairs))
+	for i, q := range pairs {
+		area[i] = at[q.key()]
+	}
+	p := st.prog.problem(pairs, []int{k})
+	st.twins(p, pairs, area, t.sol.Area[n+kept:])
+	set := lp.Settings{Gap: wantedGap, Absolute: wantedShare * st.opt.Gap * math.Max(t.sol.Objective, 1e-300)}
 	sol, err := st.opt.Solver.Solve(ctx, p, nil, set)
-	if err != nil {
-		return nil, err
+	if err != nil || sol.Raw || sol.Status == lp.NoEquilibrium {
+		return nil, false, err
 	}
-	if sol.Raw || sol.Status == lp.NoEquilibrium {
-		return nil, nil
+	top, bought := slices.Max(append([]float64{0}, t.sol.Area[:n]...)), 0.0
+	for _, a := range sol.Area[:len(pairs)] {
+		bought = math.Max(bought, a)
 	}
-	r := &stronger{cost: sol.Objective, force: st.joined(p, sol, twin, 0)}
-	n, kept, m := len(d.pairs), len(st.s.Kept), st.s.Material
-	for i := range n {
-		q := r.force[i]
-		r.area = append(r.area, math.Max(d.area[i], need(q, m.Tension, m.Compression)))
-	}
-	for i := range d.feet {
-		f := &st.prog.feet
-		a := d.feet[i]
-		if !f.Fixed[i] {
-			a = math.Max(a, need(r.force[n+kept+i], f.Tension[i], f.Compression[i]))
+	for i, p := range pairs {
+		if a := sol.Area[i]; a > wantedOfBought*bought && a > wantedOfAll*top {
+			bars = append(bars, p)
 		}
-		r.feet = append(r.feet, a)
 	}
-	return r, nil
+	return bars, true, nil
+}
+
+// wantedGap and wantedShare (of the gap of the study) say how exactly the bars that a case wants are found. A bar counts
+// as wanted from these shares on of the largest area that is bought, and of the largest that there is.
+const (
+	wantedGap      = 1e-2
+	wantedShare    = 1e-2
+	wantedOfBought = 1e-2
+	wantedOfAll    = 1e-7
+)
+
+// weighs reports whether bars weigh in some case.
+func (st *study) weighs() bool {
+	for _, c := range st.s.Cases {
+		if c.Gravity != 0 && st.s.Material.Density > 0 {
+			return true
+		}
+	}
+	return false
 }
 
 // need is the area that force q asks for.
@@ -114,125 +274,4 @@ func need(q, st, sc float64) float64 {
 		return -q / sc
 	}
 	return 0
-}
-
-// twins adds to p a bar of fixed area beside every bar and costed foot that d gives an area, and returns which they
-// belong to. With only, the bars that could be bought are priced out of p: none is added to begin with.
-func (st *study) twins(p *lp.Problem, d *design, only bool) []int {
-	top := 0.0
-	for _, a := range d.area {
-		top = math.Max(top, a)
-	}
-	n, kept := len(d.pairs), len(st.s.Kept)
-	var twin []int
-	b := &p.Bars
-	add := func(i int, area float64) {
-		lo, hi := b.Ptr[i], b.Ptr[i+1]
-		b.Add(b.Row[lo:hi], b.B[lo:hi], b.H[lo:hi], b.Tension[i], b.Compression[i], 0, area, true)
-		twin = append(twin, i)
-	}
-	for i, a := range d.area {
-		if a > freeArea*top || only && a > 0 {
-			add(i, a)
-		}
-	}
-	for i, a := range d.feet {
-		if !st.prog.feet.Fixed[i] && a > 0 {
-			add(n+kept+i, a)
-		}
-	}
-	return twin
-}
-
-// joined returns the forces of case c with those of twins added to their bars.
-func (st *study) joined(p *lp.Problem, sol *lp.Solution, twin []int, c int) []float64 {
-	base := p.Bars.Len() - len(twin)
-	q := slices.Clone(sol.Force[c][:base])
-	for t, i := range twin {
-		q[i] += sol.Force[c][base+t]
-	}
-	return q
-}
-
-func (st *study) weighs() bool {
-	for _, c := range st.s.Cases {
-		if c.Gravity != 0 && st.s.Material.Density > 0 {
-			return true
-		}
-	}
-	return false
-}
-
-// balanceWeight finds forces for every case under the weight of the final areas: strengthening for one case weighs on
-// all others. Areas grow by marginSteps, in turn, until all cases are carried.
-func (st *study) balanceWeight(ctx context.Context, d *design, rank []int) (bool, error) {
-	for _, margin := range marginSteps {
-		trial := &design{pairs: d.pairs, area: slices.Clone(d.area), feet: slices.Clone(d.feet), force: make([][]float64, len(d.force))}
-		for i := range trial.area {
-			trial.area[i] *= 1 + margin
-		}
-		for i := range trial.feet {
-			if !st.prog.feet.Fixed[i] {
-				trial.feet[i] *= 1 + margin
-			}
-		}
-		ok := true
-		for _, k := range rank {
-			q, err := st.carry(ctx, trial, k)
-			if err != nil {
-				return false, err
-			}
-			if ok = q != nil; !ok {
-				break
-			}
-			trial.force[k] = q
-		}
-		if ok {
-			*d = *trial
-			return true, nil
-		}
-		if ctx.Err() != nil {
-			return false, nil
-		}
-	}
-	return false, nil
-}
-
-// marginSteps are the shares by which areas grow until their own weight is carried as well.
-var marginSteps = []float64{2e-5, 1e-4, 5e-4, 2e-3, 1e-2}
-
-// carry returns forces for case k in a design of given areas, or nil if there are none: the bars to be bought are
-// priced so that buying none is best, and none is bought.
-func (st *study) carry(ctx context.Context, d *design, k int) ([]float64, error) {
-	p := st.prog.problem(nil, []int{k})
-	n, kept := len(d.pairs), len(st.s.Kept)
-	q := &lp.Problem{Rows: p.Rows, Block: p.Block, At: p.At, Cases: p.Cases}
-	var at []int
-	for i, a := range d.area {
-		if a > 0 {
-			c, _ := st.prog.column(int(d.pairs[i].i), int(d.pairs[i].j))
-			q.Bars.Add(c.row, c.b, c.h, st.s.Material.Tension, st.s.Material.Compression, 0, a, true)
-			at = append(at, i)
-		}
-	}
-	for i := range p.Bars.Len() {
-		lo, hi := p.Bars.Ptr[i], p.Bars.Ptr[i+1]
-		upper := p.Bars.Upper[i]
-		if f := i - kept; f >= 0 && !p.Bars.Fixed[i] {
-			if upper = d.feet[f]; upper <= 0 {
-				continue
-			}
-		}
-		q.Bars.Add(p.Bars.Row[lo:hi], p.Bars.B[lo:hi], p.Bars.H[lo:hi], p.Bars.Tension[i], p.Bars.Compression[i], 0, upper, true)
-		at = append(at, n+i)
-	}
-	sol, err := st.opt.Solver.Solve(ctx, q, nil, lp.Settings{Gap: 1e-2, Absolute: math.Inf(1)})
-	if err != nil || sol.Raw || sol.Status != lp.Optimal {
-		return nil, err
-	}
-	force := make([]float64, n+kept+len(d.feet))
-	for j, i := range at {
-		force[i] = sol.Force[0][j]
-	}
-	return force, nil
 }

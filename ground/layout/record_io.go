@@ -7,6 +7,8 @@ import (
 	"io"
 	"reflect"
 	"strings"
+
+	"boughwork/ground"
 )
 
 // Write writes a record as JSON. Numbers read back to the same float64. Every element of a long list stands on a line of
@@ -79,6 +81,15 @@ func Read(r io.Reader) (*Record, error) {
 // consistent checks that every index and every list length of the record is possible.
 func (r *Record) consistent() error {
 	n, k := len(r.Nodes), len(r.Cases)
+	if _, err := r.ParseStatus(); err != nil {
+		return err
+	}
+	if r.Candidates.ThroughNodeM != ground.ThroughNode {
+		return fmt.Errorf("candidates.through_node_m is %g, this program knows %g", r.Candidates.ThroughNodeM, ground.ThroughNode)
+	}
+	if (r.Deck == ground.DeckDiaphragm.String()) != (len(r.Diaphragms) > 0) {
+		return fmt.Errorf("deck %q with %d diaphragms", r.Deck, len(r.Diaphragms))
+	}
 	node := func(what string, i int) error {
 		if i < 0 || i >= n {
 			return fmt.Errorf("%s: node %d of %d", what, i, n)
@@ -114,8 +125,13 @@ func (r *Record) consistent() error {
 			return err
 		}
 	}
+	inDeck := map[int]bool{}
 	for d, dia := range r.Diaphragms {
 		for _, i := range dia.Nodes {
+			if inDeck[i] {
+				return fmt.Errorf("diaphragms[%d]: node %d is in a diaphragm already", d, i)
+			}
+			inDeck[i] = true
 			if err := node(fmt.Sprintf("diaphragms[%d]", d), i); err != nil {
 				return err
 			}

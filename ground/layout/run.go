@@ -31,29 +31,22 @@ func Solve(ctx context.Context, s *ground.Structure, opt Options) (*Result, erro
 		return nil, fmt.Errorf("layout: gap %g: want a number between 0 and 1, such as 0.001", opt.Gap)
 	}
 	can := ground.NewCandidates(s)
-	st := &study{s: s, prog: newProgram(s), can: can, pricer: pricer{s, can}, opt: opt, result: &Result{Solver: opt.Solver.Name()}}
+	st := &study{s: s, prog: newProgram(s), can: can, pricer: pricer{s, can}, opt: opt, letGo: map[int]bool{},
+		result: &Result{Solver: opt.Solver.Name()}}
 	st.say("candidates", 0, nil)
 	st.result.Candidates = can.Count()
 	st.active = newActive(s, can)
-	rank, err := st.rank(ctx)
-	if err != nil {
+	v, d, err := st.allCases(ctx)
+	switch {
+	case err != nil:
 		return nil, err
-	}
-	if ctx.Err() != nil {
+	case v == nil && ctx.Err() != nil:
 		st.result.Status = lp.Cancelled
 		return st.result, nil
-	}
-	if len(rank) == 0 {
+	case v == nil: // no loads
 		st.result.Displacement = zeroMotion(s)
 		st.result.Governs = make([]bool, len(s.Cases))
 		return st.result, nil
-	}
-	v, d, err := st.allCases(ctx, rank)
-	if err != nil {
-		return nil, err
-	}
-	if v.sol.Status == lp.Optimal {
-		d = st.tidy(ctx, v, d, rank)
 	}
 	st.finish(v, d)
 	return st.result, nil

@@ -76,6 +76,8 @@ func Verify(rec *Record) (*Report, error) {
 			j.load = math.Max(j.load, l.Force.Norm())
 		}
 	}
+	j.rep.add("candidates (by which the record's count is off)", math.Abs(float64(ground.NewCandidates(s).Count()-rec.Candidates.Count)), 0,
+		"record %d", rec.Candidates.Count)
 	if rec.Collapse != nil {
 		j.collapse()
 		return j.rep, nil

@@ -20,15 +20,20 @@ type Solver struct{}
 func (Solver) Name() string { return "interior" }
 
 // Penalties of an artificial force, in units of the mean cost of a unit of force, in turn. A problem that still leans on
-// artificial forces at the last has no equilibrium: any layout would need about that price.
-var penalties = []float64{1e3, 1e8}
+// artificial forces at the last has no equilibrium, if its displacements prove that any layout would cost provenCost at
+// least, in units of the cost of carrying the largest load by one mean bar.
+var penalties = []float64{1e3, 1e5, 1e8}
 
-// The gap at which a problem at the last penalty shows whether it leans on artificial forces: its objective is then
-// either of the order of 1 or of the penalty.
-const leanGap = 1e-2
+const provenCost = 1e3
 
-// An artificial force above this share of the largest load, when the gap is closed, is in use.
-const artificialInUse = 1e-6
+// An artificial force above this share of the largest load is in use, if the gap is so small that it is not for want of
+// iterations: leanGap, and leanPatience times smaller at each further look.
+const (
+	artificialInUse = 1e-6
+	leanGap         = 1e-2
+	leanPatience    = 1e-2
+	leanLooks       = 3
+)
 
 // An elastic start that leaves this share of the largest load unbalanced is a mechanism.
 const mechanismShare = 1e-7
@@ -97,8 +102,9 @@ func (s *scaled) limited() bool {
 
 // solveWithPenalty solves with artificial forces, at rising prices as long as they are in use.
 func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.Settings) (*lp.Solution, error) {
-	iterations := 0
-	for try, penalty := range penalties {
+	var last *lp.Solution
+	done := 0
+	for _, penalty := range penalties {
 		sys, err := newSystem(plain.s.withArtificial(penalty), p)
 		if err != nil {
 			return nil, err
@@ -108,29 +114,48 @@ func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.
 			return cancelled(p), nil
 		}
 		x := sys.start(d)
-		if try == len(penalties)-1 {
-			out, err := sys.run(ctx, x, leanGap, set, iterations)
-			if err == nil && sys.leans(x) {
-				return sys.noEquilibrium(p, x, out), nil
+		out, err := sys.settleArtificial(ctx, x, set, done)
+		if err != nil {
+			sol := plain.answer(p, sys.withoutArtificial(x))
+			sol.Status, sol.Iterations = lp.Cancelled, out.iterations
+			return sol, nil
+		}
+		done = out.iterations
+		if !sys.leans(x) {
+			sol, err := solveFrom(ctx, p, sys, plain, x, set, done)
+			if err != nil || sol.Status != lp.Trouble {
+				return sol, err
 			}
-			iterations = out.iterations
+			last, done = sol, sol.Iterations
+			continue
 		}
-		sol, err := solveFrom(ctx, p, sys, plain, x, set, iterations)
-		if err != nil || sol.Status != lp.NoEquilibrium || try == len(penalties)-1 {
-			return sol, err
+		sol := sys.noEquilibrium(p, x, out)
+		work, worst := lp.CheckRay(p, sol.Displacement)
+		if unit := sys.s.force * sys.s.lambda; work > 0 && work >= provenCost*unit*worst {
+			if work >= 1e4*provenCost*unit*worst || penalty == penalties[len(penalties)-1] {
+				return sol, nil
+			}
+			last = sol
+		} else if last == nil || last.Status != lp.NoEquilibrium {
+			sol.Status = lp.Trouble
+			last = sol
 		}
-		iterations = sol.Iterations
 	}
-	panic("interior: no penalties")
+	return last, nil
 }
 
-// noEquilibrium is the answer whose artificial forces are in use: the displacements are the motion that proves it.
-func (sys *system) noEquilibrium(p *lp.Problem, x *iterate, out outcome) *lp.Solution {
-	sol := sys.answer(p, x)
-	sol.Status, sol.Raw, sol.Iterations = lp.NoEquilibrium, true, out.iterations
-	normalise(sol.Displacement)
-	p.Settle(sol.Displacement)
-	return sol
+// settleArtificial runs the method until artificial forces are out of use, or the gap is so small that they are not
+// needed for want of iterations.
+func (sys *system) settleArtificial(ctx context.Context, x *iterate, set lp.Settings, done int) (outcome, error) {
+	gap := leanGap
+	for look := 1; ; look++ {
+		out, err := sys.run(ctx, x, gap, set, done)
+		if err != nil || out.status != lp.Optimal || look == leanLooks || !sys.leans(x) {
+			return out, err
+		}
+		done = out.iterations
+		gap *= leanPatience
+	}
 }
 
 // solveFrom runs the method from x and finishes the answer. plain is the system without artificial forces, or nil if
@@ -151,9 +176,6 @@ func solveFrom(ctx context.Context, p *lp.Problem, sys, plain *system, x *iterat
 			return sol, nil
 		}
 		done = out.iterations
-		if sys.leans(x) && out.status != lp.IterationLimit {
-			return sys.noEquilibrium(p, x, out), nil
-		}
 		sol := final.answer(p, final.repair(ctx, strip(x), set))
 		sol.Status, sol.Iterations = out.status, done
 		if out.warm != nil {
@@ -183,4 +205,13 @@ func (sys *system) leans(x *iterate) bool {
 		}
 	}
 	return false
+}
+
+// noEquilibrium is the answer whose artificial forces are in use: the displacements are the motion that proves it.
+func (sys *system) noEquilibrium(p *lp.Problem, x *iterate, out outcome) *lp.Solution {
+	sol := sys.answer(p, x)
+	sol.Status, sol.Raw, sol.Iterations = lp.NoEquilibrium, true, out.iterations
+	normalise(sol.Displacement)
+	p.Settle(sol.Displacement)
+	return sol
 }

@@ -1,0 +1,205 @@
+package layout
+
+import (
+	"context"
+	"math"
+	"slices"
+
+	"boughwork/lp"
+)
+
+// trimmed is a layout over few bars.
+type trimmed struct {
+	*solved
+	pairs []pair
+}
+
+// conclusion is a design for all cases, made of the bars of a layout for some.
+type conclusion struct {
+	design   *design // nil if there is none
+	layout   trimmed // what it was made of: solved for the cases that govern over these bars
+	rise     float64 // the most by which joining cases made the layout dearer, m3,
+	joined   []int   // those cases,
+	risen    trimmed // and the layout with them
+	hopeless int     // a case that none of the active bars carry, or -1
+	stuck    int     // a case for which no layout over few bars was found, or -1
+}
+
+// Bars below these shares of the largest area are left out when a design is made of a layout: of one that is not yet
+// near its bound, and so has area everywhere, the first share that leaves bars for the same cases at nearly the same
+// objective.
+var firstShares = []float64{1e-2, 1e-3, 1e-4, 1e-6}
+
+// trimExcess is the share of the gap of the layout by which leaving bars out may raise the objective.
+const trimExcess = 0.2
+
+// moreCases is how often conclude adds cases; it stops when the layout is farther from the bound than the gap and
+// farShare of it; overGap is the share of the gap to which the small
+// programs are solved; spare is the share of the gap by which their loads are enlarged, so that cases that do not govern
+// are carried with a little room.
+const (
+	moreCases = 32
+	farShare  = 0.5
+	overGap   = 0.1
+	spare     = 0.1
+)
+
+// conclude makes a design for all cases of the bars that matter in v: few bars, so that programs over them are small
+// whatever the number of cases. A case that the areas do not carry joins those that the small program is solved for, and
+// the bars that it wants join the bars. The design is then tidied as far as the gap allows.
+func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
+	out := conclusion{hopeless: -1, stuck: -1}
+	gap := math.Max(st.opt.Gap, v.gap()) // a loose layout needs no exact design
+	t := st.few(ctx, v, gap)
+	for range moreCases {
+		out.layout = t
+		if t.sol.Objective > (1+farShare*gap)*v.bestBound/(1-gap) {
+			return out, nil // more cases make it dearer still: the bound has to rise first
+		}
+		d, failed, err := st.complete(ctx, t, gap)
+		if err != nil || ctx.Err() != nil {
+			return out, err
+		}
+		if d != nil {
+			out.design = st.compact(d)
+			break
+		}
+		pairs, cases := t.pairs, t.cases
+		for _, k := range failed {
+			more, ok, err := st.wanted(ctx, t, k)
+			if err != nil || ctx.Err() != nil {
+				return out, err
+			}
+			if !ok {
+				out.hopeless = k
+				return out, nil
+			}
+			pairs, cases = union(pairs, more), with(cases, k)
+		}
+		next, ok := st.over(ctx, pairs, nil, cases, v.bestBound, gap)
+		if !ok {
+			out.stuck = failed[0]
+			return out, nil
+		}
+		if rise := next.sol.Objective - t.sol.Objective; rise > out.rise {
+			out.rise, out.joined, out.risen = rise, failed, next
+		}
+		t = next
+	}
+	budget := v.bestBound / (1 - st.opt.Gap)
+	if out.design == nil || out.design.objective > budget {
+		return out, nil
+	}
+	for _, t := range st.tidy(ctx, t) {
+		d, _, err := st.complete(ctx, t, st.opt.Gap)
+		if err != nil || ctx.Err() != nil {
+			return out, err
+		}
+		if d != nil && d.objective <= budget {
+			out.design = st.compact(d)
+			break
+		}
+	}
+	return out, nil
+}
+
+// few returns a layout for the cases of v over few of its bars.
+func (st *study) few(ctx context.Context, v *solved, gap float64) trimmed {
+	all := trimmed{v, st.active.pairs}
+	allowed := v.sol.Objective * (1 + trimExcess*gap)
+	for _, share := range firstShares {
+		t, ok := st.over(ctx, above(all, share), nil, v.cases, v.bestBound, gap)
+		if ok && t.sol.Objective <= allowed {
+			return t
+		}
+	}
+	return all
+}
+
+// governs returns a case that the bound needs beside those that govern already: of the cases that made the layout dearest
+// when they joined, the one whose loads do most work. It is -1 if none made it dearer by more than a small share of the
+// gap.
+func (c conclusion) governs(already []int, gap float64) int {
+	k, top := -1, 0.0
+	if c.rise < riseShare*gap*c.layout.sol.Objective {
+		return k
+	}
+	for i, w := range c.risen.work() {
+		n := c.risen.cases[i]
+		if w > top && slices.Contains(c.joined, n) && !slices.Contains(already, n) {
+			k, top = n, w
+		}
+	}
+	return k
+}
+
+// riseShare is the share of the gap by which a case must make the layout dearer to govern.
+const riseShare = 0.02
+
+// above returns the pairs whose area is above a share of the largest.
+func above(t trimmed, share float64) []pair {
+	area := t.sol.Area[:len(t.pairs)]
+	top := 0.0
+	for _, a := range area {
+		top = math.Max(top, a)
+	}
+	var out []pair
+	for i, p := range t.pairs {
+		if area[i] > share*top {
+			out = append(out, p)
+		}
+	}
+	return out
+}
+
+// union joins two lists of pairs that are in order.
+func union(a, b []pair) []pair {
+	u := active{in: map[int64]bool{}}
+	for _, p := range append(slices.Clone(a), b...) {
+		if !u.in[p.key()] {
+			u.in[p.key()] = true
+			u.pairs = append(u.pairs, p)
+		}
+	}
+	u.sort()
+	return u.pairs
+}
+
+// over solves for the given cases over few pairs; dearer, if not nil, multiplies their costs. The objective of the
+// solution is at the true costs. gap is that of the design; the program is solved to overGap of it.
+func (st *study) over(ctx context.Context, pairs []pair, dearer []float64, cases []int, bound, gap float64) (trimmed, bool) {
+	p := st.prog.problem(pairs, cases)
+	more := 1 + spare*gap
+	for c := range p.Cases {
+		p.Cases[c].Gravity *= more
+		for r := range p.Cases[c].Load {
+			p.Cases[c].Load[r] *= more
+		}
+	}
+	for i := range dearer {
+		p.Bars.Cost[i] *= dearer[i]
+	}
+	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: math.Max(overGap*gap, 1e-8)})
+	if err != nil || sol.Raw || sol.Status != lp.Optimal {
+		return trimmed{}, false
+	}
+	for c := range p.Cases { // back to the loads as they are: balance is linear in loads, weights and forces
+		p.Cases[c].Gravity /= more
+		for r := range p.Cases[c].Load {
+			p.Cases[c].Load[r] /= more
+		}
+		for i := range sol.Force[c] {
+			sol.Force[c][i] /= more
+		}
+	}
+	sol.Objective = 0
+	for i, a := range sol.Area {
+		if i < len(pairs) {
+			p.Bars.Cost[i] = pairs[i].cost
+		}
+		if !p.Bars.Fixed[i] {
+			sol.Objective += p.Bars.Cost[i] * a
+		}
+	}
+	return trimmed{&solved{cases: cases, sol: sol, problem: p, bestBound: bound}, pairs}, true
+}
