@@ -81,6 +81,9 @@ func (st *study) grow(ctx context.Context, cases []int, target float64, from *so
 		if sol.Status == lp.Cancelled {
 			return v, nil
 		}
+		if sol.Raw && sol.Status != lp.NoEquilibrium || math.IsNaN(sol.Objective) && sol.Status != lp.NoEquilibrium { // nothing feasible was found
+			return v, nil
+		}
 		v.problem.Settle(sol.Displacement)
 		v.u = st.expand(sol.Displacement)
 		if sol.Status == lp.NoEquilibrium {

@@ -116,6 +116,9 @@ func (Solver) Solve(ctx context.Context, p *lp.Problem, _ *lp.Start, set lp.Sett
 	if err := p.Validate(); err != nil {
 		return nil, err
 	}
+	// GLPK's tolerances are absolute: newtons, pascals and square metres side by side are more than they bear.
+	p, scale := p.Scaled()
+	set.Absolute /= scale.Force * scale.Cost
 	// GLPK keeps its state in thread-local storage.
 	runtime.LockOSThread()
 	defer runtime.UnlockOSThread()
@@ -126,15 +129,19 @@ func (Solver) Solve(ctx context.Context, p *lp.Problem, _ *lp.Start, set lp.Sett
 	}
 
 	m := newModel(p, false)
-	o, err := solveModel(ctx, m, set, C.GLP_DUALP, 0)
+	o, err := solveModel(ctx, m, set, C.GLP_PRIMAL, 0)
 	if err == nil && o.status == lp.Trouble {
-		o, err = solveModel(ctx, m, set, C.GLP_PRIMAL, o.pivots)
+		o, err = solveModel(ctx, m, set, C.GLP_DUALP, o.pivots)
 	}
 	if err != nil {
 		return nil, err
 	}
 	if o.status == lp.NoEquilibrium {
-		return collapse(ctx, p, set, o.pivots)
+		s, err := collapse(ctx, p, set, o.pivots)
+		if err == nil {
+			scale.Restore(s)
+		}
+		return s, err
 	}
 	s := blank(p)
 	if o.x != nil {
@@ -144,6 +151,7 @@ func (Solver) Solve(ctx context.Context, p *lp.Problem, _ *lp.Start, set lp.Sett
 	if s.Status == lp.Optimal && !set.Closed(s.Objective, s.Bound) && !(s.Objective-s.Bound <= nothing*m.cost) {
 		s.Status = lp.Trouble
 	}
+	scale.Restore(s)
 	return s, nil
 }
 
