@@ -27,9 +27,6 @@ const (
 	firstCheck = 3e-2
 	// growShare is the share of the gap that the layout for the governing cases may use; the rest is for the others.
 	growShare = 0.5
-	// completeShare is the share of the gap that the price of one case may be off: what the cases add is the sum over
-	// bars of the largest over cases, so errors add up.
-	completeShare = 1e-3
 	// missingShare is the share of the gap that is for want of cases to which the next layout is solved.
 	missingShare = 0.2
 	// slackShare is the share of the work of all loads below which a case does not govern.

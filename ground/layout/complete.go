@@ -3,7 +3,10 @@ package layout
 import (
 	"context"
 	"math"
+	"runtime"
 	"slices"
+	"sync"
+	"sync/atomic"
 
 	"boughwork/ground"
 	"boughwork/lp"
@@ -63,29 +66,64 @@ const (
 )
 
 // pass finds forces for the given cases in the areas of d, strengthening them within the budget. It returns the cases
-// for which that does not do.
+// for which that does not do. Cases are tried chunk by chunk on all cores, in the areas that the chunk began with; those
+// that fail are tried again one after the other, so that the outcome does not depend on the number of cores.
 func (st *study) pass(ctx context.Context, t trimmed, d *design, cases []int, budget *float64) ([]int, error) {
 	var failed []int
-	for done, k := range cases {
-		st.say("cases", float64(done)/float64(len(cases)), t.solved)
-		q, err := st.carry(ctx, d, k)
-		if err == nil && q == nil && ctx.Err() == nil {
-			var cost float64
-			q, cost, err = st.strengthen(ctx, d, k, *budget)
-			*budget -= cost
+	for from := 0; from < len(cases); from += passChunk {
+		chunk := cases[from:min(from+passChunk, len(cases))]
+		st.say("cases", float64(from)/float64(len(cases)), t.solved)
+		force := make([][]float64, len(chunk))
+		err := onAllCores(len(chunk), func(i int) (err error) {
+			force[i], err = st.carry(ctx, d, chunk[i])
+			return err
+		})
+		for i, k := range chunk {
+			if err != nil || ctx.Err() != nil {
+				return nil, err
+			}
+			if force[i] == nil {
+				var cost float64
+				force[i], cost, err = st.strengthen(ctx, d, k, *budget)
+				*budget -= cost
+			}
+			if force[i] == nil && err == nil && ctx.Err() == nil {
+				if failed = append(failed, k); len(failed) > len(t.cases)/failedShare {
+					return failed, nil
+				}
+				continue
+			}
+			d.force[k] = force[i]
 		}
-		if err != nil || ctx.Err() != nil {
+		if err != nil {
 			return nil, err
 		}
-		if q == nil {
-			if failed = append(failed, k); len(failed) > len(t.cases)/failedShare {
-				return failed, nil
-			}
-			continue
-		}
-		d.force[k] = q
 	}
 	return failed, nil
+}
+
+// passChunk is how many cases are tried at once.
+const passChunk = 8
+
+// onAllCores calls f for 0 to n-1 from several goroutines and returns the first error by number.
+func onAllCores(n int, f func(i int) error) error {
+	errs := make([]error, n)
+	var next atomic.Int64
+	var wg sync.WaitGroup
+	for range min(n, runtime.GOMAXPROCS(0)) {
+		wg.Go(func() {
+			for i := int(next.Add(1)) - 1; i < n; i = int(next.Add(1)) - 1 {
+				errs[i] = f(i)
+			}
+		})
+	}
+	wg.Wait()
+	for _, err := range errs {
+		if err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 // weight returns the weight of the bars of a design at gravity factor 1, N.

@@ -65,16 +65,20 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 			break
 		}
 		pairs, cases := t.pairs, t.cases
-		for _, k := range failed {
-			more, ok, err := st.wanted(ctx, t, k)
-			if err != nil || ctx.Err() != nil {
-				return out, err
-			}
-			if !ok {
+		more, able := make([][]pair, len(failed)), make([]bool, len(failed))
+		err = onAllCores(len(failed), func(i int) (err error) {
+			more[i], able[i], err = st.wanted(ctx, t, failed[i])
+			return err
+		})
+		if err != nil || ctx.Err() != nil {
+			return out, err
+		}
+		for i, k := range failed {
+			if !able[i] {
 				out.hopeless = k
 				return out, nil
 			}
-			pairs, cases = union(pairs, more), with(cases, k)
+			pairs, cases = union(pairs, more[i]), with(cases, k)
 		}
 		next, ok := st.over(ctx, pairs, nil, cases, v.bestBound, gap)
 		if !ok {

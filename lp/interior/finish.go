@@ -86,6 +86,10 @@ func (sys *system) withoutArtificial(x *iterate) *iterate {
 	return &iterate{a: x.a[:n], z: x.z[:n], pi: x.pi[:n], q: x.q[:nk], p: x.p[:nk], m: x.m[:nk], yp: x.yp[:nk], ym: x.ym[:nk], u: x.u}
 }
 
+// Forces that leave more than this share of the largest load unbalanced are no equilibrium: half of what the record
+// promises.
+const balanceShare = 5e-9
+
 // A bar that is stressed beyond this share of its strength, or a limit passed by it, makes an answer raw.
 const strengthShare = 1e-9
 
@@ -109,7 +113,7 @@ func (sys *system) answer(p *lp.Problem, x *iterate) *lp.Solution {
 	}
 	p.Settle(sol.Displacement)
 	sol.Bound, _ = lp.Bound(p, sol.Displacement)
-	sol.Raw = s.broken(x) || largest(sys.unbalanced(x.q, x.a)) > 1e-7
+	sol.Raw = s.broken(x) || largest(sys.unbalanced(x.q, x.a)) > balanceShare
 	return sol
 }
 

@@ -11,7 +11,7 @@ import (
 //
 //	a' = a sigma/F,  q' = q/F,  c' = c/(sigma Lambda),  u' = u/Lambda,  h' = h/sigma,  f' = f/F.
 //
-// The last virtual bars are artificial forces, one a row, at the cost penalty; see phase.go.
+// The last virtual bars are artificial forces, one a row, at the cost penalty; see solve.go.
 type scaled struct {
 	rows, bars, cases int
 	real              int // bars of the caller; the rest are artificial

@@ -13,7 +13,7 @@ import (
 //
 //	M_kk' = delta_kk' sum_i b_i b_i' / D_ik + sum_i v_ik v_ik'' / S_i,   v_ik = t_ik b_i - g_k h_i,
 //
-// with weights from the iterate (weights.go). Vectors over it hold, block after block of the problem, the rows of case
+// with weights from the iterate (direction.go). Vectors over it hold, block after block of the problem, the rows of case
 // 0, of case 1 and so on.
 type system struct {
 	s      *scaled
