@@ -157,6 +157,14 @@ type RecordCollapse struct {
 	// LeastVolumeM3 is the volume that any layout would need at least: beyond all reason; absent if it has no end.
 	LeastVolumeM3 float64 `json:"least_volume_m3,omitempty"`
 	Text          string  `json:"text"`
+	// Others are motions of further cases, in the same scale, where only several cases together prove it.
+	Others []RecordMotion `json:"others,omitempty"`
+}
+
+// RecordMotion is the motion that the loads of a case drive, [node][x y z].
+type RecordMotion struct {
+	Case   string       `json:"case"`
+	Motion [][3]float64 `json:"motion"`
 }
 
 // RecordRound is one round of member adding.

@@ -177,8 +177,18 @@ func recordCollapse(s *ground.Structure, c *Collapse) *RecordCollapse {
 	if !math.IsInf(c.LeastVolume, 1) {
 		out.LeastVolumeM3 = c.LeastVolume
 	}
+	for _, o := range c.Others {
+		out.Others = append(out.Others, RecordMotion{s.Cases[o.Case].Name, motion(o.Motion, 1)})
+	}
 	out.Text = collapseText(s, out)
 	return out
+}
+
+func others(n int) string {
+	if n == 1 {
+		return "another"
+	}
+	return fmt.Sprintf("%d others", n)
 }
 
 func collapseText(s *ground.Structure, c *RecordCollapse) string {
@@ -186,6 +196,11 @@ func collapseText(s *ground.Structure, c *RecordCollapse) string {
 		return fmt.Sprintf("No layout carries the weight of its own bars in case %q.", c.Case)
 	}
 	at := s.Nodes[c.Nodes[0]].At
+	if len(c.Others) > 0 {
+		return fmt.Sprintf("No layout of the candidate bars and feet carries case %q together with %s: its loads move %d loaded nodes, most at "+
+			"(%.2f, %.2f, %.2f) m, and what would resist one case, be it the weight of bars, fails another. Give that place a foot, a wall or "+
+			"room for bars, or let the feet take more.", c.Case, others(len(c.Others)), len(c.Nodes), at.X, at.Y, at.Z)
+	}
 	return fmt.Sprintf("No layout of the candidate bars and feet carries case %q: its loads move %d loaded nodes, most at (%.2f, %.2f, %.2f) m, "+
 		"and nothing resists. Give that place a foot, a wall or room for bars, or let the feet take more.", c.Case, len(c.Nodes), at.X, at.Y, at.Z)
 }

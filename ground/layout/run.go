@@ -192,5 +192,47 @@ func (st *study) collapse(v *solved) *Collapse {
 			out = c
 		}
 	}
+	if out != nil && len(v.cases) > 1 && out.LeastVolume < 10*beyondReason*st.naturalVolume() {
+		if all := st.collapseOfAll(v); all != nil && all.LeastVolume > out.LeastVolume {
+			return all
+		}
+	}
 	return out
+}
+
+// collapseOfAll returns the motions of all cases of v as one proof, the case whose loads work most first.
+func (st *study) collapseOfAll(v *solved) *Collapse {
+	c := &Collapse{Case: -1, Work: st.dual(v.problem, v.sol.Displacement, 1), LeastVolume: math.Inf(1)}
+	if !(c.Work > 0) {
+		return nil
+	}
+	if f := st.pricer.price(v.u, st.gravity(v.cases), math.Inf(1)); f.worst > 0 {
+		c.LeastVolume = c.Work / f.worst
+	}
+	top, most, first := 0.0, math.Inf(-1), 0
+	for i, uk := range v.u {
+		work := 0.0
+		for _, l := range st.s.Cases[v.cases[i]].Loads {
+			work += l.Force.Dot(uk[l.Node])
+		}
+		if work > most {
+			most, first = work, i
+		}
+		for _, w := range uk {
+			top = math.Max(top, math.Max(math.Abs(w.X), math.Max(math.Abs(w.Y), math.Abs(w.Z))))
+		}
+	}
+	c.Work /= top
+	for i, uk := range v.u {
+		m := make([]geom.Vec, len(uk))
+		for j, w := range uk {
+			m[j] = w.Scale(1 / top)
+		}
+		if i == first {
+			c.Case, c.Motion = v.cases[i], m
+		} else {
+			c.Others = append(c.Others, CaseMotion{v.cases[i], m})
+		}
+	}
+	return c
 }

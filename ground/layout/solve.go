@@ -66,6 +66,15 @@ type Collapse struct {
 	Motion      []geom.Vec // [node], scaled so that the largest component is 1
 	Work        float64    // of the loads on the motion, less what feet and kept members can absorb, J
 	LeastVolume float64    // any layout needs at least this much, m3; +Inf if no bar resists the motion at all
+	// Others are motions of further cases, where only several together prove it: bars that weigh can hold down one side
+	// of a roof that tips, but not both. Scaled as Motion is.
+	Others []CaseMotion
+}
+
+// CaseMotion is a motion that the loads of a case drive.
+type CaseMotion struct {
+	Case   int
+	Motion []geom.Vec
 }
 
 // Meta is what a record says beside the result.

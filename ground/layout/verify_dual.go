@@ -3,6 +3,7 @@ package layout
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"boughwork/geom"
 	"boughwork/ground"
@@ -151,23 +152,24 @@ const beyondReason = 1e2
 // collapse judges the motion that is to prove that no layout exists.
 func (j *judge) collapse() {
 	c := j.rec.Collapse
-	at := -1
-	for k, rc := range j.rec.Cases {
-		if rc.Name == c.Case {
-			at = k
-		}
-	}
-	if at < 0 || len(c.Motion) != len(j.s.Nodes) {
-		j.rep.add("collapse (motion of a case that is not there)", 1, 0, "case %q", c.Case)
-		return
-	}
+	all := append([]RecordMotion{{c.Case, c.Motion}}, c.Others...)
 	one := *j.s
-	one.Cases = j.s.Cases[at : at+1]
-	j.s = &one
-	j.u = [][]geom.Vec{nil}
-	for _, v := range c.Motion {
-		j.u[0] = append(j.u[0], geom.FromArray(v))
+	one.Cases = nil
+	j.u = nil
+	for _, m := range all {
+		at := slices.IndexFunc(j.rec.Cases, func(rc RecordCase) bool { return rc.Name == m.Case })
+		if at < 0 || len(m.Motion) != len(j.s.Nodes) {
+			j.rep.add("collapse (motion of a case that is not there)", 1, 0, "case %q", m.Case)
+			return
+		}
+		one.Cases = append(one.Cases, j.s.Cases[at])
+		var u []geom.Vec
+		for _, v := range m.Motion {
+			u = append(u, geom.FromArray(v))
+		}
+		j.u = append(j.u, u)
 	}
+	j.s = &one
 	j.rigid()
 	work, worst := j.bound(), j.priceAll()
 	st := study{s: j.s}

@@ -9,6 +9,7 @@ package interior
 
 import (
 	"context"
+	"math"
 
 	"boughwork/lp"
 )
@@ -21,10 +22,11 @@ func (Solver) Name() string { return "interior" }
 
 // Penalties of an artificial force, in units of the mean cost of a unit of force, in turn. A problem that still leans on
 // artificial forces at the last has no equilibrium, if its displacements prove that any layout would cost provenCost at
-// least, in units of the cost of carrying the largest load by one mean bar.
+// least, in units of the cost of carrying all loads of the largest case by one mean bar each: a wide roof on a narrow foot
+// costs tens of them.
 var penalties = []float64{1e3, 1e5, 1e8}
 
-const provenCost = 1e3
+const provenCost = 300
 
 // An artificial force above this share of the largest load is in use, if the gap is so small that it is not for want of
 // iterations: leanGap, and leanPatience times smaller at each further look.
@@ -131,7 +133,7 @@ func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.
 		}
 		sol := sys.noEquilibrium(p, x, out)
 		work, worst := lp.CheckRay(p, sol.Displacement)
-		if unit := sys.s.force * sys.s.lambda; work > 0 && work >= provenCost*unit*worst {
+		if unit := sys.s.total() * sys.s.force * sys.s.lambda; work > 0 && work >= provenCost*unit*worst {
 			if work >= 1e4*provenCost*unit*worst || penalty == penalties[len(penalties)-1] {
 				return sol, nil
 			}
@@ -214,4 +216,17 @@ func (sys *system) noEquilibrium(p *lp.Problem, x *iterate, out outcome) *lp.Sol
 	normalise(sol.Displacement)
 	p.Settle(sol.Displacement)
 	return sol
+}
+
+// total returns the sum of all loads of the largest case, in units of the largest load.
+func (s *scaled) total() float64 {
+	top := 1.0
+	for _, f := range s.load {
+		sum := 0.0
+		for _, v := range f {
+			sum += math.Abs(v)
+		}
+		top = math.Max(top, sum)
+	}
+	return top
 }
