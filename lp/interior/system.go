@@ -119,21 +119,16 @@ func (sys *system) hasPart(begin int, v int32) bool {
 	return false
 }
 
-// dot returns b_i . x for case k, times returns h_i . x.
-func (sys *system) dot(i, k int, x []float64) float64 {
-	sum := 0.0
-	for j := sys.s.ptr[i]; j < sys.s.ptr[i+1]; j++ {
-		r := sys.s.row[j]
-		sum += sys.s.b[j] * x[sys.base[r]+int32(k)*sys.stride[r]]
-	}
-	return sum
-}
+// dot returns b_i . x for case k, lift returns h_i . x.
+func (sys *system) dot(i, k int, x []float64) float64  { return sys.times(sys.s.b, i, k, x) }
+func (sys *system) lift(i, k int, x []float64) float64 { return sys.times(sys.s.h, i, k, x) }
 
-func (sys *system) lift(i, k int, x []float64) float64 {
+// times returns the scalar product of x in case k with the values of bar i.
+func (sys *system) times(value []float64, i, k int, x []float64) float64 {
 	sum := 0.0
 	for j := sys.s.ptr[i]; j < sys.s.ptr[i+1]; j++ {
 		r := sys.s.row[j]
-		sum += sys.s.h[j] * x[sys.base[r]+int32(k)*sys.stride[r]]
+		sum += value[j] * x[sys.base[r]+int32(k)*sys.stride[r]]
 	}
 	return sum
 }

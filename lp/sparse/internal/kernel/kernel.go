@@ -32,10 +32,10 @@ func SubMulT(c []float64, ldc int, a []float64, lda int, b []float64, ldb int, m
 		}
 		for p0 := 0; p0 < k; p0 += kc {
 			pn := min(kc, k-p0)
-			w.packB(b, ldb, j0, jn, p0, pn)
+			pack(w.b, b, ldb, j0, jn, p0, pn, nr)
 			band := func(i int, own *buffer) {
 				in := min(mc, m-i)
-				own.packA(a, lda, i, in, p0, pn)
+				pack(own.a, a, lda, i, in, p0, pn, mr)
 				tiles(c, ldc, own.a, w.b, i, in, j0, jn, pn, lower, &own.edge)
 			}
 			bands := (m - i0 + mc - 1) / mc
@@ -87,45 +87,23 @@ var buffers = sync.Pool{New: func() any {
 	return &buffer{a: make([]float64, (mc+mr)*kc), b: make([]float64, (nc+nr)*kc)}
 }}
 
-// packA copies rows i..i+in of A into strips of mr rows, column by column, padded with zeros.
-func (w *buffer) packA(a []float64, lda, i, in, p, pn int) {
+// pack copies rows r0..r0+n of a matrix into strips of width rows, column by column, padded with zeros.
+func pack(to, from []float64, ld, r0, n, p, pn, width int) {
 	at := 0
-	for r := 0; r < in; r += mr {
-		for s := range mr {
-			dst := w.a[at+s:]
-			if r+s >= in {
+	for r := 0; r < n; r += width {
+		for s := range width {
+			dst := to[at+s:]
+			if r+s >= n {
 				for q := range pn {
-					dst[q*mr] = 0
+					dst[q*width] = 0
 				}
 				continue
 			}
-			src := a[(i+r+s)*lda+p:][:pn]
-			for q, v := range src {
-				dst[q*mr] = v
+			for q, v := range from[(r0+r+s)*ld+p:][:pn] {
+				dst[q*width] = v
 			}
 		}
-		at += mr * pn
-	}
-}
-
-// packB copies rows j..j+jn of B into strips of nr rows, column by column, padded with zeros.
-func (w *buffer) packB(b []float64, ldb, j, jn, p, pn int) {
-	at := 0
-	for r := 0; r < jn; r += nr {
-		for s := range nr {
-			dst := w.b[at+s:]
-			if r+s >= jn {
-				for q := range pn {
-					dst[q*nr] = 0
-				}
-				continue
-			}
-			src := b[(j+r+s)*ldb+p:][:pn]
-			for q, v := range src {
-				dst[q*nr] = v
-			}
-		}
-		at += nr * pn
+		at += width * pn
 	}
 }
 
