@@ -111,13 +111,16 @@ func (sys *system) answer(p *lp.Problem, x *iterate) *lp.Solution {
 			sol.Force[c][i] = x.q[i*s.cases+c] * s.force
 		}
 	}
+	if s.free() {
+		sol.Displacement = zeros(s.cases, s.rows)
+	}
 	p.Settle(sol.Displacement)
 	sol.Bound, _ = lp.Bound(p, sol.Displacement)
 	sol.Raw = s.broken(x) || largest(sys.unbalanced(x.q, x.a)) > balanceShare
 	return sol
 }
 
-// broken reports whether a force is beyond what its bar's area carries.
+// broken reports whether a force is beyond what its bar's area carries, or no number.
 func (s *scaled) broken(x *iterate) bool {
 	for i := range s.real {
 		slack := strengthShare * math.Max(x.a[i], 1e-9)
@@ -126,7 +129,7 @@ func (s *scaled) broken(x *iterate) bool {
 		}
 		for j := i * s.cases; j < (i+1)*s.cases; j++ {
 			q := x.q[j]
-			if s.hasP[i] && q > s.st[i]*x.a[i]+slack || s.hasM[i] && -q > s.sc[i]*x.a[i]+slack {
+			if math.IsNaN(q) || s.hasP[i] && q > s.st[i]*x.a[i]+slack || s.hasM[i] && -q > s.sc[i]*x.a[i]+slack {
 				return true
 			}
 		}

@@ -49,7 +49,7 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 			return outcome{lp.Optimal, it, warm}, nil
 		case it >= set.Iterations:
 			return outcome{lp.IterationLimit, it, warm}, nil
-		case stuck >= 4 || math.IsNaN(primal+dual):
+		case stuck >= 4 || math.IsNaN(primal+dual) || sys.hopeless(it-done, r, primal, dual):
 			return outcome{lp.Trouble, it, warm}, nil
 		}
 		s.weigh(x, w)
@@ -77,9 +77,28 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 	}
 }
 
-// converged reports whether the point is good enough: gap, balance of forces, and prices within a share of the gap.
+// hopeless reports whether a start out of balance shows no sign of coming into it after so many iterations.
+func (sys *system) hopeless(iterations int, r residuals, primal, dual float64) bool {
+	if sys.patience == 0 || largest(r.force) <= unbalancedShare {
+		return false
+	}
+	return iterations >= sys.patience || math.Abs(dual) > runaway*(1+primal)
+}
+
+// unbalancedShare is the share of the largest load that counts as out of balance. A bound of more than runaway times the
+// objective is no bound but a motion that grows without end.
+const (
+	unbalancedShare = 1e-6
+	runaway         = 1e12
+)
+
+// converged reports whether the point is good enough: gap, balance of forces, and prices within a share of the gap. Where
+// nothing costs anything, forces in balance are all that is wanted.
 func (sys *system) converged(r residuals, primal, dual, gap float64, set lp.Settings) bool {
 	s := sys.s
+	if s.free() {
+		return largest(r.force) <= set.Residual
+	}
 	absolute := math.Max(gap/set.Gap*set.Absolute/(s.force*s.lambda), nothingShare/2)
 	if !(math.Abs(primal-dual) <= math.Max(gap*math.Abs(primal), absolute)) || largest(r.force) > 1e2*set.Residual {
 		return false

@@ -10,6 +10,7 @@ package interior
 import (
 	"context"
 	"math"
+	"slices"
 
 	"boughwork/lp"
 )
@@ -86,8 +87,17 @@ func (s Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set l
 	if unbalanced <= mechanismShare && !sc.limited() {
 		return solveFrom(ctx, p, sys, nil, sys.start(d), set, 0)
 	}
+	sys.patience = patience
+	sol, err := solveFrom(ctx, p, sys, nil, sys.start(d), set, 0)
+	if err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled {
+		return sol, err
+	}
 	return solveWithPenalty(ctx, p, sys, set)
 }
+
+// A start whose forces are out of balance must be in balance after this many iterations; if it is not, there may be no
+// equilibrium, and artificial forces will tell. Solves that get there do so in ten to twenty.
+const patience = 40
 
 // limited reports whether the elastic start may be out of bounds.
 func (s *scaled) limited() bool {
@@ -100,6 +110,11 @@ func (s *scaled) limited() bool {
 		}
 	}
 	return false
+}
+
+// free reports whether nothing is to be bought: all bars are fixed.
+func (s *scaled) free() bool {
+	return !slices.Contains(s.fixed, false)
 }
 
 // solveWithPenalty solves with artificial forces, at rising prices as long as they are in use.

@@ -33,6 +33,8 @@ type system struct {
 	edge    []int32
 	entries []int32 // entries of a bar, grouped by block
 	work    []float64
+	// Iterations after which the forces must be in balance, or 0: a start out of balance that does not come into it.
+	patience int
 }
 
 // part is a run of entries of a bar in one block.
