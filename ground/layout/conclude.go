@@ -1,6 +1,7 @@
 package layout
 
 import (
+	"cmp"
 	"context"
 	"math"
 	"slices"
@@ -25,12 +26,11 @@ type conclusion struct {
 	stuck    int     // a case for which no layout over few bars was found, or -1
 }
 
-// Bars below these shares of the largest area are left out when a design is made of a layout: of one that is not yet
-// near its bound, and so has area everywhere, the first share that leaves bars for the same cases at nearly the same
-// objective.
-var firstShares = []float64{1e-2, 1e-3, 1e-4, 1e-6}
+// When a design is made of a layout, its thinnest bars are left out: those that together cost these shares of the gap, the
+// first share at which what is left carries the same cases at nearly the same objective, which may rise by trimExcess of
+// the gap.
+var thinShares = []float64{1, 0.3, 0.1, 0.03, 0.01}
 
-// trimExcess is the share of the gap of the layout by which leaving bars out may raise the objective.
 const trimExcess = 0.2
 
 // moreCases is how often conclude adds cases; it stops when the layout is farther from the bound than the gap and
@@ -111,8 +111,8 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 func (st *study) few(ctx context.Context, v *solved, gap float64) trimmed {
 	all := trimmed{v, st.active.pairs}
 	allowed := v.sol.Objective * (1 + trimExcess*gap)
-	for _, share := range firstShares {
-		t, ok := st.over(ctx, above(all, share), nil, v.cases, v.bestBound, gap)
+	for _, share := range thinShares {
+		t, ok := st.over(ctx, heavy(all, share*gap), nil, v.cases, v.bestBound, gap)
 		if ok && t.sol.Objective <= allowed {
 			return t
 		}
@@ -140,20 +140,28 @@ func (c conclusion) governs(already []int, gap float64) int {
 // riseShare is the share of the gap by which a case must make the layout dearer to govern.
 const riseShare = 0.02
 
-// above returns the pairs whose area is above a share of the largest.
-func above(t trimmed, share float64) []pair {
+// heavy returns the pairs without the thinnest, which together cost at most a share of the objective.
+func heavy(t trimmed, share float64) []pair {
 	area := t.sol.Area[:len(t.pairs)]
-	top := 0.0
-	for _, a := range area {
-		top = math.Max(top, a)
+	order := make([]int, len(t.pairs))
+	for i := range order {
+		order[i] = i
 	}
-	var out []pair
+	slices.SortStableFunc(order, func(i, j int) int { return cmp.Compare(area[i], area[j]) })
+	left, out := share*t.sol.Objective, make([]bool, len(t.pairs))
+	for _, i := range order {
+		if left -= t.pairs[i].cost * area[i]; left < 0 {
+			break
+		}
+		out[i] = true
+	}
+	var kept []pair
 	for i, p := range t.pairs {
-		if area[i] > share*top {
-			out = append(out, p)
+		if !out[i] {
+			kept = append(kept, p)
 		}
 	}
-	return out
+	return kept
 }
 
 // union joins two lists of pairs that are in order.

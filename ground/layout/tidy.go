@@ -7,18 +7,20 @@ import (
 )
 
 // An interior-point layout lies in the midst of all layouts of its volume, and so has many thin bars. tidy looks for
-// layouts with few: it takes the bars that matter and solves over them alone, with costs that rise for thin bars
-// (reweighting: Candes, Wakin and Boyd 2008), as long as the objective stays within a budget. What it finds are layouts
-// as good as any other: the bound over all candidates stays.
+// layouts with few, as long as the objective stays within a budget, in two ways by turns: it makes thin bars dearer and
+// solves again (reweighting: Candes, Wakin and Boyd 2008), and it leaves the thinnest out altogether. What it finds are
+// layouts as good as any other: the bound over all candidates stays.
 //
-// tidyKeep are the shares of the largest area below which bars are left out, the boldest first; tidyThin is the share of
-// the largest area that counts as thin, and tidyLift how much dearer the thinnest bars become; tidyPasses limits the work.
-var tidyKeep = []float64{1e-2, 1e-3, 1e-4}
+// tidyCut are the shares of the gap that the bars left out may cost together, the boldest first. tidyThin is the share of
+// the largest area that counts as thin, tidyLift how much dearer the thinnest bars become at most: less if that might
+// cost more than tidySpend of what is left of the budget. tidyPasses limits the work.
+var tidyCut = []float64{3, 1, 0.3, 0.1, 0.01}
 
 const (
 	tidyThin   = 2e-2
 	tidyLift   = 0.5
-	tidyPasses = 8
+	tidySpend  = 0.5
+	tidyPasses = 4
 	tidyReturn = 0.95 // a pass that leaves more than this share of the bars is not worth another
 	tidyBudget = 0.9  // share of the gap that a tidy layout may use before the last cases are checked
 )
@@ -30,33 +32,53 @@ func (st *study) tidy(ctx context.Context, t trimmed) []trimmed {
 		return out
 	}
 	budget := t.bestBound / (1 - tidyBudget*st.opt.Gap)
-	keep := 0
-	for pass := 0; pass < tidyPasses && keep < len(tidyKeep) && ctx.Err() == nil; pass++ {
+	cuts := tidyCut
+	for pass := 0; pass < tidyPasses && ctx.Err() == nil; pass++ {
 		st.say("tidying", float64(pass)/tidyPasses, t.solved)
 		last := out[0]
-		next, ok := st.thin(ctx, last, tidyKeep[keep])
-		if !ok || next.sol.Objective > budget || float64(len(next.pairs)) > tidyReturn*float64(len(last.pairs)) {
-			keep++
-			continue
+		from := last
+		if next, ok := st.over(ctx, last.pairs, dearer(last, budget), last.cases, last.bestBound, st.opt.Gap); ok && next.sol.Objective <= budget {
+			from = next
 		}
-		out = append([]trimmed{next}, out...)
+		cuts = st.cut(ctx, &from, cuts, budget)
+		if float64(len(from.pairs)) > tidyReturn*float64(len(last.pairs)) {
+			break
+		}
+		out = append([]trimmed{from}, out...)
 	}
 	return out
 }
 
-// thin solves over the bars of a layout that are above a share of its largest area, thin bars being dearer.
-func (st *study) thin(ctx context.Context, last trimmed, share float64) (trimmed, bool) {
-	area := last.sol.Area[:len(last.pairs)]
-	top := slices.Max(area)
-	var pairs []pair
-	var dearer []float64
-	for i, p := range last.pairs {
-		if area[i] > share*top {
-			pairs = append(pairs, p)
-			dearer = append(dearer, 1+tidyLift*tidyThin/(tidyThin+area[i]/top))
+// cut leaves out the thinnest bars of t, the most that the budget allows, and returns the cuts that may do next time: those
+// bolder than the one that did are not tried again.
+func (st *study) cut(ctx context.Context, t *trimmed, cuts []float64, budget float64) []float64 {
+	for i, share := range cuts {
+		pairs := heavy(*t, share*st.opt.Gap)
+		if len(pairs) == len(t.pairs) {
+			break
+		}
+		if next, ok := st.over(ctx, pairs, nil, t.cases, t.bestBound, st.opt.Gap); ok && next.sol.Objective <= budget {
+			*t = next
+			return cuts[i:]
 		}
 	}
-	return st.over(ctx, pairs, dearer, last.cases, last.bestBound, st.opt.Gap)
+	return cuts
+}
+
+// dearer returns factors for the costs of the bars of t, larger for thin ones.
+func dearer(t trimmed, budget float64) []float64 {
+	area := t.sol.Area[:len(t.pairs)]
+	top := slices.Max(area)
+	more, spent := make([]float64, len(area)), 0.0
+	for i, a := range area {
+		more[i] = tidyThin / (tidyThin + a/top)
+		spent += more[i] * t.pairs[i].cost * a
+	}
+	lift := math.Min(tidyLift, tidySpend*math.Max(0, budget-t.sol.Objective)/spent)
+	for i := range more {
+		more[i] = 1 + lift*more[i]
+	}
+	return more
 }
 
 // Bars below this share of the largest area carry nothing that matters to 1e-8 of the load; compact lets them go.

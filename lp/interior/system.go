@@ -1,9 +1,6 @@
 package interior
 
 import (
-	"context"
-	"math"
-
 	"boughwork/lp"
 	"boughwork/lp/sparse"
 )
@@ -32,7 +29,7 @@ type system struct {
 	edgePtr []int32
 	edge    []int32
 	entries []int32 // entries of a bar, grouped by block
-	work    []float64
+	term    [][]term
 	// Iterations after which the forces must be in balance, or 0: a start out of balance that does not come into it.
 	patience int
 }
@@ -53,7 +50,7 @@ func newSystem(s *scaled, p *lp.Problem) (*system, error) {
 	}
 	sys.mat = sparse.NewMatrix(sys.graph)
 	sys.factor = sparse.NewFactor(sym)
-	sys.work = make([]float64, 0, 64)
+	sys.collect()
 	return sys, nil
 }
 
@@ -147,86 +144,6 @@ func (sys *system) add(i, k int, beta, eta float64, x []float64) {
 type weights struct {
 	invD, t []float64 // [bar * cases + case]
 	invS    []float64 // [bar]
-}
-
-// A diagonal entry is raised by this share of the largest in its block, so that a row that no bar holds now keeps a
-// pivot; larger values were seen to spoil the last digits of the equilibrium.
-// A block that no bar touches gets emptyShare of the largest entry of all instead.
-const (
-	diagonalShare = 1e-15
-	emptyShare    = 1e-6
-)
-
-// assemble fills and factorises the matrix.
-func (sys *system) assemble(ctx context.Context, w *weights) error {
-	sys.mat.Clear()
-	for i := range sys.s.bars {
-		sys.addBar(i, w)
-	}
-	top := make([]float64, len(sys.mat.Diag))
-	all := 0.0
-	for v, d := range sys.mat.Diag {
-		n := sys.graph.Size[v]
-		for x := range n {
-			top[v] = math.Max(top[v], d[x*n+x])
-		}
-		all = math.Max(all, top[v])
-	}
-	for v, d := range sys.mat.Diag {
-		n := sys.graph.Size[v]
-		raise := diagonalShare * math.Max(top[v], emptyShare*all)
-		for x := range n {
-			d[x*n+x] += raise
-		}
-	}
-	return sys.factor.Factorise(ctx, sys.mat)
-}
-
-// addBar adds the contribution of bar i to the blocks that it touches.
-func (sys *system) addBar(i int, w *weights) {
-	parts := sys.part[sys.partPtr[i]:sys.partPtr[i+1]]
-	e := sys.edgePtr[i]
-	for x, px := range parts {
-		sys.addPair(i, px, px, sys.mat.Diag[px.block], true, w)
-		for _, py := range parts[:x] {
-			rows, cols := px, py
-			if px.block < py.block {
-				rows, cols = py, px
-			}
-			sys.addPair(i, rows, cols, sys.mat.Off[sys.edge[e]], false, w)
-			e++
-		}
-	}
-}
-
-// addPair adds the contribution of bar i to the block with the rows of part x and the columns of part y.
-func (sys *system) addPair(i int, x, y part, dst []float64, lower bool, w *weights) {
-	s, k := sys.s, sys.s.cases
-	ld := sys.graph.Size[y.block]
-	invS := w.invS[i]
-	for _, jx := range sys.entries[x.first:x.end] {
-		rx := s.row[jx]
-		for cx := range k {
-			at := int(sys.local[rx]+int32(cx)*sys.stride[rx]) * ld
-			vx := w.t[i*k+cx]*s.b[jx] - s.gravity[cx]*s.h[jx]
-			for _, jy := range sys.entries[y.first:y.end] {
-				ry := s.row[jy]
-				col := at + int(sys.local[ry])
-				step := int(sys.stride[ry])
-				last := k
-				if lower {
-					last = cx + 1
-				}
-				if invS != 0 {
-					f := vx * invS
-					for cy := range last {
-						dst[col+cy*step] += f * (w.t[i*k+cy]*s.b[jy] - s.gravity[cy]*s.h[jy])
-					}
-				}
-				dst[col+cx*step] += w.invD[i*k+cx] * s.b[jx] * s.b[jy]
-			}
-		}
-	}
 }
 
 // multiply returns M x, bar by bar, without the matrix: it knows nothing of the rounding that assembly did.

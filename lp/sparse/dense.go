@@ -7,7 +7,7 @@ import (
 )
 
 // Columns that the unblocked Cholesky takes at once.
-const denseBlock = 48
+const denseBlock = kernel.Width
 
 // A pivot that has fallen below this share of the diagonal entry it came from is rounding noise: the row depends on the
 // rows before it. Its unknown is held at zero by a pivot of droppedPivot.
@@ -55,37 +55,8 @@ func (p *panel) base(c0, n int) {
 		}
 		row[j-c0] = math.Sqrt(d)
 	}
-	r := c0 + n
-	for ; r+4 <= p.rows; r += 4 {
-		p.solve4(r, c0, n)
-	}
-	for ; r < p.rows; r++ {
-		row := p.a[r*ld+c0:]
-		for j := range n {
-			row[j] = (row[j] - dot(row[:j], p.a[(c0+j)*ld+c0:])) / p.a[(c0+j)*ld+c0+j]
-		}
-	}
-}
-
-// solve4 solves four rows at once, so that each entry of L is read once for four.
-func (p *panel) solve4(r, c0, n int) {
-	ld := p.cols
-	x0, x1 := p.a[r*ld+c0:][:n], p.a[(r+1)*ld+c0:][:n]
-	x2, x3 := p.a[(r+2)*ld+c0:][:n], p.a[(r+3)*ld+c0:][:n]
-	for j := range n {
-		l := p.a[(c0+j)*ld+c0:][:j+1]
-		var s0, s1, s2, s3 float64
-		for q, v := range l[:j] {
-			s0 += v * x0[q]
-			s1 += v * x1[q]
-			s2 += v * x2[q]
-			s3 += v * x3[q]
-		}
-		inv := 1 / l[j]
-		x0[j] = (x0[j] - s0) * inv
-		x1[j] = (x1[j] - s1) * inv
-		x2[j] = (x2[j] - s2) * inv
-		x3[j] = (x3[j] - s3) * inv
+	if r := c0 + n; r < p.rows {
+		kernel.NewTriangle(p.a[c0*ld+c0:], ld, n).SolveT(p.a[r*ld+c0:], ld, p.rows-r, p.workers)
 	}
 }
 

@@ -79,21 +79,51 @@ func (f *Factor) Factorise(ctx context.Context, m *Matrix) error {
 		}()
 	}
 	wg.Wait()
-	w := f.newWorker(m, update, dropped, workers)
-	for _, i := range above {
-		if ctx.Err() != nil {
-			break
-		}
-		w.front(i)
-	}
+	f.climb(ctx, above, func() *worker { return f.newWorker(m, update, dropped, workers) })
 	for _, d := range dropped {
 		f.Dropped += d
 	}
 	return ctx.Err()
 }
 
+// climb eliminates the fronts above the subtrees, which are children before parents. Those of different branches go on at
+// the same time; inside, large fronts are shared between workers too.
+func (f *Factor) climb(ctx context.Context, above []int32, hire func() *worker) {
+	upper := map[int32]bool{}
+	for _, i := range above {
+		upper[i] = true
+	}
+	var climb func(w *worker, i int32)
+	climb = func(w *worker, i int32) {
+		var wg sync.WaitGroup
+		first := int32(-1)
+		for _, c := range f.sym.node[i].child {
+			switch {
+			case !upper[c]:
+			case first < 0:
+				first = c
+			default:
+				wg.Go(func() { climb(hire(), c) })
+			}
+		}
+		if first >= 0 {
+			climb(w, first)
+		}
+		wg.Wait()
+		if ctx.Err() == nil {
+			w.front(i)
+		}
+	}
+	w := hire()
+	for _, r := range f.sym.root {
+		if upper[r] {
+			climb(w, r)
+		}
+	}
+}
+
 // cutTree parts the tree into subtrees that one worker each takes whole, the heaviest first, and the fronts above them,
-// children before parents, which all workers share.
+// children before parents.
 func (f *Factor) cutTree(workers int) (below, above []int32) {
 	limit := f.sym.Flops / float64(4*workers)
 	if workers == 1 {
@@ -124,7 +154,7 @@ type worker struct {
 	update  [][]float64
 	dropped []int
 	rowOf   []int32 // rowOf[position] = first row of the block in the present front
-	to      []int32
+	run     []run
 	scale   []float64
 	workers int
 }
@@ -147,18 +177,18 @@ func (w *worker) front(i int32) {
 	f, t := w.f, &w.f.sym.node[i]
 	w.number(t)
 	a := f.panel[i]
-	clear(a)
 	rest := t.rows - t.cols
 	u := f.scratch.get(rest * rest)
-	w.assemble(i, t, a)
-	for _, c := range t.child {
-		w.extendAdd(c, t, a, u)
-		f.scratch.put(w.update[c])
-		w.update[c] = nil
-	}
 	workers := w.workers
 	if t.flops < sharedFront {
 		workers = 1
+	}
+	clearFront(t, a, u, workers)
+	w.assemble(i, t, a)
+	for _, c := range t.child {
+		w.extendAdd(c, t, a, u, workers)
+		f.scratch.put(w.update[c])
+		w.update[c] = nil
 	}
 	p := panel{a: a, rows: t.rows, cols: t.cols, scale: w.scale, workers: workers}
 	p.factor(0, t.cols)
@@ -212,37 +242,6 @@ func (w *worker) assemble(i int32, t *supernode, a []float64) {
 				for y, v := range b[x*cn:][:cn] {
 					dst[y] += v
 				}
-			}
-		}
-	}
-}
-
-// extendAdd adds what child c does to later rows.
-func (w *worker) extendAdd(c int32, t *supernode, a, u []float64) {
-	g, order := w.f.sym.graph, w.f.sym.order
-	from := w.update[c]
-	w.to = w.to[:0]
-	for _, p := range w.f.sym.node[c].below {
-		for x := range g.Size[order[p]] {
-			w.to = append(w.to, w.rowOf[p]+int32(x))
-		}
-	}
-	n, cols, rest := len(w.to), t.cols, t.rows-t.cols
-	inPanel := 0 // rows of the child that this front eliminates
-	for inPanel < n && int(w.to[inPanel]) < cols {
-		inPanel++
-	}
-	for x := range n {
-		src := from[x*n : x*n+x+1]
-		r := int(w.to[x])
-		dst := a[r*cols:]
-		for y, v := range src[:min(x+1, inPanel)] {
-			dst[w.to[y]] += v
-		}
-		if x >= inPanel {
-			dst = u[(r-cols)*rest:]
-			for y := inPanel; y <= x; y++ {
-				dst[int(w.to[y])-cols] += src[y]
 			}
 		}
 	}

@@ -1,15 +1,13 @@
-// Package kernel holds the dense kernel that the sparse factorisation spends its time in: C -= A B' for row-major
-// matrices, by packed tiles (Goto and van de Geijn 2008). The plain Go version always compiles; assembly replaces only
-// the innermost tile and is tested against it.
+// Package kernel holds the dense kernels that the sparse factorisation spends its time in: C -= A B' for row-major
+// matrices, by tiles over packed strips of B (Goto and van de Geijn 2008; A is read as it is), and the solution for few
+// columns. The plain Go version always compiles; assembly replaces only the innermost tile and is tested against it.
 package kernel
 
 import "sync"
 
-// Tile sizes: a micro tile is mr x nr numbers of C. kc and mc keep a packed strip of B in the first and a packed block
-// of A in the second cache level; nc bounds the packed block of B.
+// Block sizes: kc and mc keep a packed strip of B in the first and a block of A in the second cache level; nc bounds the
+// packed block of B. mc and nc are multiples of the sides of every tile.
 const (
-	mr = 4
-	nr = 12
 	kc = 256
 	mc = 96
 	nc = 1536
@@ -22,30 +20,29 @@ func SubMulT(c []float64, ldc int, a []float64, lda int, b []float64, ldb int, m
 	if m == 0 || n == 0 || k == 0 {
 		return
 	}
+	t := &chosen
 	w := buffers.Get().(*buffer)
 	defer buffers.Put(w)
 	for j0 := 0; j0 < n; j0 += nc {
 		jn := min(nc, n-j0)
 		i0 := 0
 		if lower {
-			i0 = j0 / mr * mr // rows above see no wanted entry of these columns
+			i0 = j0 / t.mr * t.mr // rows above see no wanted entry of these columns
 		}
 		for p0 := 0; p0 < k; p0 += kc {
 			pn := min(kc, k-p0)
-			pack(w.b, b, ldb, j0, jn, p0, pn, nr)
+			packAll(w.b, b, ldb, j0, jn, p0, pn, t.nr, workers)
 			band := func(i int, own *buffer) {
-				in := min(mc, m-i)
-				pack(own.a, a, lda, i, in, p0, pn, mr)
-				tiles(c, ldc, own.a, w.b, i, in, j0, jn, pn, lower, &own.edge)
+				t.tiles(c, ldc, a[p0:], lda, w.b, i, min(mc, m-i), j0, jn, pn, lower, own)
 			}
 			bands := (m - i0 + mc - 1) / mc
 			if workers < 2 || bands < 2 {
-				for t := range bands {
-					band(i0+t*mc, w)
+				for b := range bands {
+					band(i0+b*mc, w)
 				}
 				continue
 			}
-			parallel(bands, workers, func(t int, own *buffer) { band(i0+t*mc, own) })
+			parallel(bands, workers, func(b int, own *buffer) { band(i0+b*mc, own) })
 		}
 	}
 }
@@ -77,55 +74,105 @@ func parallel(n, workers int, f func(t int, own *buffer)) {
 	wg.Wait()
 }
 
-// buffer is the packing space of one goroutine.
+// largestTile bounds the sides of a tile.
+const largestTile = 16
+
+// buffer is the space of one goroutine: a packed block of B, and copies of what stands over the edge of A and of C.
 type buffer struct {
 	a, b []float64
-	edge [mr * nr]float64
+	edge [largestTile * largestTile]float64
 }
 
 var buffers = sync.Pool{New: func() any {
-	return &buffer{a: make([]float64, (mc+mr)*kc), b: make([]float64, (nc+nr)*kc)}
+	return &buffer{a: make([]float64, largestTile*kc), b: make([]float64, (nc+largestTile)*kc)}
 }}
 
-// pack copies rows r0..r0+n of a matrix into strips of width rows, column by column, padded with zeros.
+// packShare is how many strips are worth a goroutine of their own.
+const packShare = 4
+
+// packAll packs a block of B, on so many goroutines.
+func packAll(to, from []float64, ld, r0, n, p, pn, width, workers int) {
+	step := packShare * width
+	if workers < 2 || n <= step {
+		pack(to, from, ld, r0, n, p, pn, width)
+		return
+	}
+	parallel((n+step-1)/step, workers, func(t int, _ *buffer) {
+		pack(to[t*step*pn:], from, ld, r0+t*step, min(step, n-t*step), p, pn, width)
+	})
+}
+
+// pack copies rows r0..r0+n of a matrix into strips of width rows, column by column, padded with zeros. Four rows are
+// read at once, so that the strip is written in order. width is a multiple of four.
 func pack(to, from []float64, ld, r0, n, p, pn, width int) {
 	at := 0
 	for r := 0; r < n; r += width {
-		for s := range width {
+		for s := 0; s < width; s += 4 {
 			dst := to[at+s:]
-			if r+s >= n {
-				for q := range pn {
-					dst[q*width] = 0
-				}
+			if r+s+4 > n {
+				packEdge(dst, from, ld, r0+r+s, n-r-s, p, pn, width)
 				continue
 			}
-			for q, v := range from[(r0+r+s)*ld+p:][:pn] {
-				dst[q*width] = v
+			row := from[(r0+r+s)*ld+p:]
+			x0, x1, x2, x3 := row[:pn], row[ld:][:pn], row[2*ld:][:pn], row[3*ld:][:pn]
+			for q, v := range x0 {
+				d := dst[q*width:][:4:4]
+				d[0], d[1], d[2], d[3] = v, x1[q], x2[q], x3[q]
 			}
 		}
 		at += width * pn
 	}
 }
 
+// packEdge packs the last n < 4 rows, if any, and zeros after them.
+func packEdge(dst, from []float64, ld, r, n, p, pn, width int) {
+	for s := range 4 {
+		if s >= n {
+			for q := range pn {
+				dst[q*width+s] = 0
+			}
+			continue
+		}
+		for q, v := range from[(r+s)*ld+p:][:pn] {
+			dst[q*width+s] = v
+		}
+	}
+}
+
 // tiles runs the micro tile over a band of in rows and jn columns.
-func tiles(c []float64, ldc int, pa, pb []float64, i0, in, j0, jn, k int, lower bool, edge *[mr * nr]float64) {
+func (t *shape) tiles(c []float64, ldc int, a []float64, lda int, pb []float64, i0, in, j0, jn, k int, lower bool, own *buffer) {
+	mr, nr := t.mr, t.nr
+	last := in / mr * mr // rows from here on do not fill a tile
+	if last < in {
+		for r := range mr {
+			row := own.a[r*k:][:k]
+			if last+r < in {
+				copy(row, a[(i0+last+r)*lda:])
+			} else {
+				clear(row)
+			}
+		}
+	}
 	for j := 0; j < jn; j += nr {
 		b := pb[j*k:][: nr*k : nr*k]
 		for i := 0; i < in; i += mr {
 			if lower && i0+i+mr-1 < j0+j {
 				continue // wholly above the diagonal
 			}
-			a := pa[i*k:][: mr*k : mr*k]
-			if i+mr <= in && j+nr <= jn {
-				tile(k, a, b, c[(i0+i)*ldc+j0+j:], ldc)
+			ai, ld := own.a, k
+			if i < last {
+				ai, ld = a[(i0+i)*lda:], lda
+			}
+			if i < last && j+nr <= jn {
+				t.run(k, ai, ld, b, c[(i0+i)*ldc+j0+j:], ldc)
 				continue
 			}
-			clear(edge[:])
-			tile(k, a, b, edge[:], nr)
+			clear(own.edge[:mr*nr])
+			t.run(k, ai, ld, b, own.edge[:], nr)
 			for r := range min(mr, in-i) {
 				row := c[(i0+i+r)*ldc+j0+j:]
 				for s := range min(nr, jn-j) {
-					row[s] += edge[r*nr+s]
+					row[s] += own.edge[r*nr+s]
 				}
 			}
 		}
