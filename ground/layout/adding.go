@@ -46,7 +46,7 @@ type solved struct {
 	worst     float64      // largest price over cost, all candidates
 	u         [][]geom.Vec // [case of cases][node], not scaled
 	scale     float64      // what u is to be scaled by
-	best      [][]geom.Vec // displacements of the best bound so far, scaled
+	best      [][]geom.Vec // [case of all] displacements of the best bound so far, scaled; nil for a case that it does not need
 	bestBound float64
 	bestWorst float64
 }
@@ -64,7 +64,7 @@ func (st *study) grow(ctx context.Context, cases []int, target float64, from *so
 	v := &solved{cases: cases, bestBound: math.Inf(-1)}
 	if from != nil { // a bound for some cases is a bound for all
 		v.bestBound, v.bestWorst = from.bestBound, from.bestWorst
-		v.best = st.widen(from, cases)
+		v.best = from.best
 		gap = math.Max(math.Min(gap, from.gap()), goalShare*target)
 	}
 	gravity := st.gravity(cases)
@@ -134,10 +134,10 @@ func (st *study) judge(v *solved, worst float64) {
 	bound := st.dual(v.problem, v.sol.Displacement, v.scale)
 	if bound > v.bestBound {
 		v.bestBound, v.bestWorst = bound, v.worst-1
-		v.best = make([][]geom.Vec, len(v.u))
-		for k := range v.u {
-			v.best[k] = make([]geom.Vec, len(v.u[k]))
-			for i, w := range v.u[k] {
+		v.best = make([][]geom.Vec, len(st.s.Cases))
+		for c, k := range v.cases {
+			v.best[k] = make([]geom.Vec, len(v.u[c]))
+			for i, w := range v.u[c] {
 				v.best[k][i] = w.Scale(v.scale)
 			}
 		}
@@ -208,20 +208,6 @@ func (st *study) expand(u [][]float64) [][]geom.Vec {
 	out := make([][]geom.Vec, len(u))
 	for k := range u {
 		out[k] = st.prog.expand(u[k])
-	}
-	return out
-}
-
-// widen returns the best displacements of v in the order of cases, zero for cases that v did not know.
-func (st *study) widen(v *solved, cases []int) [][]geom.Vec {
-	out := make([][]geom.Vec, len(cases))
-	for i, k := range cases {
-		out[i] = make([]geom.Vec, len(st.s.Nodes))
-		for j, c := range v.cases {
-			if c == k && v.best != nil {
-				out[i] = v.best[j]
-			}
-		}
 	}
 	return out
 }

@@ -62,9 +62,9 @@ func (st *study) allCases(ctx context.Context) (*solved, *design, error) {
 		if c.design != nil && (best == nil || c.design.objective < best.objective) {
 			best = c.design
 		}
-		k := c.governs(governing, st.opt.Gap)
-		if k < 0 && c.stuck >= 0 && !slices.Contains(governing, c.stuck) {
-			k = c.stuck
+		more := c.governs(governing, st.opt.Gap)
+		if more == nil && c.stuck >= 0 && !slices.Contains(governing, c.stuck) {
+			more = []int{c.stuck}
 		}
 		switch {
 		case best != nil && (best.objective <= 0 || (best.objective-v.bestBound)/best.objective <= st.opt.Gap):
@@ -80,8 +80,11 @@ func (st *study) allCases(ctx context.Context) (*solved, *design, error) {
 		case st.rounds >= st.opt.MaxRounds || final < 1e-3*st.opt.Gap:
 			v.sol.Status = lp.IterationLimit
 			return v, best, nil
-		case k >= 0:
-			governing = with(st.withoutSlack(v, governing), k)
+		case more != nil:
+			governing = st.withoutSlack(v, governing)
+			for _, k := range more {
+				governing = with(governing, k)
+			}
 			missing := 1 - v.bestBound/c.layout.sol.Objective
 			target = math.Max(final, math.Min(firstCheck, missingShare*missing))
 		case target > final:
@@ -93,8 +96,11 @@ func (st *study) allCases(ctx context.Context) (*solved, *design, error) {
 	}
 }
 
-// with returns the cases and one more, ascending.
+// with returns the cases and one more, ascending; the same cases if it is among them.
 func with(cases []int, k int) []int {
+	if slices.Contains(cases, k) {
+		return cases
+	}
 	out := append(slices.Clone(cases), k)
 	slices.Sort(out)
 	return out

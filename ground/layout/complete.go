@@ -16,8 +16,9 @@ import (
 // after case. It returns the design; or nil and cases that ask for too much, which are then moved to the front of the
 // order: what failed once is likely to fail again. gap is that of the design.
 //
-// Where bars weigh, what one case adds weighs on all others. The cases are then gone through again, all of them, until
-// what is added weighs nothing to speak of.
+// Where bars weigh, what one case adds weighs on all others. All areas are then enlarged a little, which gives every case
+// more room than the weight takes, and the cases are gone through again, all of them, until what is added weighs nothing
+// to speak of.
 func (st *study) complete(ctx context.Context, t trimmed, gap float64) (*design, []int, error) {
 	n, kept := len(t.pairs), len(st.s.Kept)
 	d := &design{pairs: t.pairs, area: slices.Clone(t.sol.Area[:n]), feet: slices.Clone(t.sol.Area[n+kept:]), force: make([][]float64, len(st.s.Cases))}
@@ -31,7 +32,7 @@ func (st *study) complete(ctx context.Context, t trimmed, gap float64) (*design,
 			rest = append(rest, k)
 		}
 	}
-	for pass := range weightPasses {
+	for range weightPasses {
 		before := st.weight(d)
 		failed, err := st.pass(ctx, t, d, rest, &budget)
 		if err != nil || ctx.Err() != nil {
@@ -48,58 +49,105 @@ func (st *study) complete(ctx context.Context, t trimmed, gap float64) (*design,
 			st.value(d)
 			return d, nil, nil
 		}
-		if pass == 0 {
-			rest = st.order
-		}
+		rest = st.order
+		budget -= st.enlarge(d, weightRoom*gap)
 	}
 	return nil, nil, nil
 }
 
 // strengthenShare is the share of the gap that strengthening may cost, over all cases. pass looks for one case that is
 // not carried, and one more for so many that are in the program already. Cases are gone through weightPasses times at
-// most, until a pass adds no more weight than weightShare of the largest load: a fifth of what the record promises.
+// most, until a pass adds no more weight than weightShare of the largest load: a fifth of what the record promises. Before each
+// of these passes areas grow by weightRoom of the gap.
 const (
 	strengthenShare = 0.4
 	failedShare     = 3
 	weightPasses    = 8
 	weightShare     = 2e-9
+	weightRoom      = 0.05
 )
 
+// enlarge multiplies all areas of a design by one and a share more, and returns what that costs.
+func (st *study) enlarge(d *design, share float64) float64 {
+	cost := 0.0
+	for i := range d.area {
+		cost += share * d.area[i] * d.pairs[i].cost
+		d.area[i] *= 1 + share
+	}
+	for i := range d.feet {
+		if !st.prog.feet.Fixed[i] {
+			cost += share * d.feet[i] * st.prog.feet.Cost[i]
+			d.feet[i] *= 1 + share
+		}
+	}
+	return cost
+}
+
 // pass finds forces for the given cases in the areas of d, strengthening them within the budget. It returns the cases
-// for which that does not do. Cases are tried chunk by chunk on all cores, in the areas that the chunk began with; those
-// that fail are tried again one after the other, so that the outcome does not depend on the number of cores.
+// for which that does not do. Cases are tried chunk by chunk on all cores, in the areas that the chunk began with, so that
+// the outcome does not depend on the number of cores; areas are then the largest that any of them asks for.
 func (st *study) pass(ctx context.Context, t trimmed, d *design, cases []int, budget *float64) ([]int, error) {
 	var failed []int
 	for from := 0; from < len(cases); from += passChunk {
 		chunk := cases[from:min(from+passChunk, len(cases))]
 		st.say("cases", float64(from)/float64(len(cases)), t.solved)
 		force := make([][]float64, len(chunk))
+		left := *budget
 		err := onAllCores(len(chunk), func(i int) (err error) {
-			force[i], err = st.carry(ctx, d, chunk[i])
+			if d.force[chunk[i]] != nil { // carried before, in nearly the same areas
+				if force[i], err = st.carry(ctx, d, chunk[i]); force[i] != nil || err != nil {
+					return err
+				}
+			}
+			force[i], err = st.strengthen(ctx, d, chunk[i], left)
 			return err
 		})
+		if err != nil || ctx.Err() != nil {
+			return nil, err
+		}
 		for i, k := range chunk {
-			if err != nil || ctx.Err() != nil {
-				return nil, err
-			}
-			if force[i] == nil {
-				var cost float64
-				force[i], cost, err = st.strengthen(ctx, d, k, *budget)
-				*budget -= cost
-			}
-			if force[i] == nil && err == nil && ctx.Err() == nil {
+			cost := st.fit(d, force[i], *budget)
+			if cost < 0 {
 				if failed = append(failed, k); len(failed) > len(t.cases)/failedShare {
 					return failed, nil
 				}
 				continue
 			}
+			*budget -= cost
 			d.force[k] = force[i]
-		}
-		if err != nil {
-			return nil, err
 		}
 	}
 	return failed, nil
+}
+
+// fit enlarges the areas of d to what the forces q need and returns what that costs; -1, and d as it was, if it costs more
+// than the budget or if there are no forces.
+func (st *study) fit(d *design, q []float64, budget float64) float64 {
+	if q == nil {
+		return -1
+	}
+	n, kept, m, feet := len(d.pairs), len(st.s.Kept), st.s.Material, &st.prog.feet
+	cost := 0.0
+	for i, a := range d.area {
+		cost += d.pairs[i].cost * math.Max(0, need(q[i], m.Tension, m.Compression)-a)
+	}
+	for i, a := range d.feet {
+		if !feet.Fixed[i] {
+			cost += feet.Cost[i] * math.Max(0, need(q[n+kept+i], feet.Tension[i], feet.Compression[i])-a)
+		}
+	}
+	if cost > budget {
+		return -1
+	}
+	for i, a := range d.area {
+		d.area[i] = math.Max(a, need(q[i], m.Tension, m.Compression))
+	}
+	for i, a := range d.feet {
+		if !feet.Fixed[i] {
+			d.feet[i] = math.Max(a, need(q[n+kept+i], feet.Tension[i], feet.Compression[i]))
+		}
+	}
+	return cost
 }
 
 // passChunk is how many cases are tried at once.
@@ -187,41 +235,32 @@ func (st *study) carry(ctx context.Context, d *design, k int) ([]float64, error)
 
 // carryIterations is enough for any case that given areas carry with a little to spare; one that they carry just so is
 // better made to govern.
-const carryIterations = 40
+const carryIterations = 14
 
-// strengthen finds the cheapest areas to add to d so that case k is carried too, adds them and returns the forces and the
-// cost, exact to a small share of the budget: minimise sum c s subject to equilibrium and -sc (a + s) <= q <= st (a + s).
-// Each bar is there twice, once with its area at no cost and once to be bought; so is each foot that costs. It returns
-// nil if the bars of d cannot carry the case within the budget. What is bought does not weigh here: complete sees to that.
-func (st *study) strengthen(ctx context.Context, d *design, k int, budget float64) ([]float64, float64, error) {
+// strengthen returns forces for case k that ask for the cheapest additions to the areas of d, exact to a small share of
+// the budget: minimise sum c s subject to equilibrium and -sc (a + s) <= q <= st (a + s). Each bar is there twice, once with
+// its area at no cost and once to be bought; so is each foot that costs. It returns nil if the bars of d cannot carry the
+// case within the budget. What is bought does not weigh here: complete sees to that.
+func (st *study) strengthen(ctx context.Context, d *design, k int, budget float64) ([]float64, error) {
 	p := st.prog.problem(d.pairs, []int{k})
 	twin := st.twins(p, d.pairs, d.area, d.feet)
 	clear(p.Bars.H[:p.Bars.Ptr[len(d.pairs)]])
-	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: strengthenGap, Absolute: strengthenFloor * budget})
+	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: strengthenGap, Absolute: strengthenFloor * budget, Iterations: smallIterations})
 	if err != nil || sol.Raw || sol.Status == lp.NoEquilibrium || sol.Objective > budget {
-		return nil, 0, err
+		return nil, err
 	}
 	base := p.Bars.Len() - len(twin)
 	q := slices.Clone(sol.Force[0][:base])
 	for j, i := range twin {
 		q[i] += sol.Force[0][base+j]
 	}
-	n, kept, m := len(d.pairs), len(st.s.Kept), st.s.Material
-	for i := range d.area {
-		d.area[i] = math.Max(d.area[i], need(q[i], m.Tension, m.Compression))
-	}
-	for i := range d.feet {
-		if f := &st.prog.feet; !f.Fixed[i] {
-			d.feet[i] = math.Max(d.feet[i], need(q[n+kept+i], f.Tension[i], f.Compression[i]))
-		}
-	}
-	return q, sol.Objective, nil
+	return q, nil
 }
 
 // strengthenGap is how exactly the cost of strengthening is found, as a share of itself; strengthenFloor of the budget.
 const (
 	strengthenGap   = 1e-2
-	strengthenFloor = 1e-4
+	strengthenFloor = 2e-3
 )
 
 // twins adds to p a bar of fixed area beside every bar of d and every costed foot, and returns which they belong to.

@@ -19,9 +19,7 @@ type trimmed struct {
 type conclusion struct {
 	design   *design // nil if there is none
 	layout   trimmed // what it was made of: solved for the cases that govern over these bars
-	rise     float64 // the most by which joining cases made the layout dearer, m3,
-	joined   []int   // those cases,
-	risen    trimmed // and the layout with them
+	rise     float64 // the most by which joining cases made the layout dearer, m3
 	hopeless int     // a case that none of the active bars carry, or -1
 	stuck    int     // a case for which no layout over few bars was found, or -1
 }
@@ -33,16 +31,17 @@ var thinShares = []float64{1, 0.3, 0.1, 0.03, 0.01}
 
 const trimExcess = 0.2
 
-// moreCases is how often conclude adds cases; it stops when the layout is farther from the bound than the gap and
-// farShare of it; overGap is the share of the gap to which the small
+// moreCases is how often conclude adds cases; overGap is the share of the gap to which the small
 // programs are solved; spare is the share of the gap by which their loads are enlarged, so that cases that do not govern
 // are carried with a little room.
 const (
 	moreCases = 32
-	farShare  = 0.5
 	overGap   = 0.1
 	spare     = 0.1
 )
+
+// smallIterations limits the programs over few bars: twice what those take that have an answer.
+const smallIterations = 60
 
 // conclude makes a design for all cases of the bars that matter in v: few bars, so that programs over them are small
 // whatever the number of cases. A case that the areas do not carry joins those that the small program is solved for, and
@@ -53,9 +52,6 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 	t := st.few(ctx, v, gap)
 	for range moreCases {
 		out.layout = t
-		if t.sol.Objective > (1+farShare*gap)*v.bestBound/(1-gap) {
-			return out, nil // more cases make it dearer still: the bound has to rise first
-		}
 		d, failed, err := st.complete(ctx, t, gap)
 		if err != nil || ctx.Err() != nil {
 			return out, err
@@ -63,6 +59,11 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 		if d != nil {
 			out.design = st.compact(d)
 			break
+		}
+		if failed == nil { // the weights did not settle: one case less to complete
+			if failed = st.outside(t.cases); failed == nil {
+				return out, nil
+			}
 		}
 		pairs, cases := t.pairs, t.cases
 		more, able := make([][]pair, len(failed)), make([]bool, len(failed))
@@ -85,9 +86,7 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 			out.stuck = failed[0]
 			return out, nil
 		}
-		if rise := next.sol.Objective - t.sol.Objective; rise > out.rise {
-			out.rise, out.joined, out.risen = rise, failed, next
-		}
+		out.rise = math.Max(out.rise, next.sol.Objective-t.sol.Objective)
 		t = next
 	}
 	budget := v.bestBound / (1 - st.opt.Gap)
@@ -107,6 +106,16 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 	return out, nil
 }
 
+// outside returns the first case of the order that is not among those given, or none.
+func (st *study) outside(cases []int) []int {
+	for _, k := range st.order {
+		if !slices.Contains(cases, k) {
+			return []int{k}
+		}
+	}
+	return nil
+}
+
 // few returns a layout for the cases of v over few of its bars.
 func (st *study) few(ctx context.Context, v *solved, gap float64) trimmed {
 	all := trimmed{v, st.active.pairs}
@@ -120,25 +129,40 @@ func (st *study) few(ctx context.Context, v *solved, gap float64) trimmed {
 	return all
 }
 
-// governs returns a case that the bound needs beside those that govern already: of the cases that made the layout dearest
-// when they joined, the one whose loads do most work. It is -1 if none made it dearer by more than a small share of the
-// gap.
-func (c conclusion) governs(already []int, gap float64) int {
-	k, top := -1, 0.0
+// governs returns the cases that the bound seems to need beside those that govern already: all whose loads do a share of
+// the work in the layout over few bars, or at least the one that does most. There are none if joining cases made that
+// layout dearer by no more than a small share of the gap.
+func (c conclusion) governs(already []int, gap float64) []int {
 	if c.rise < riseShare*gap*c.layout.sol.Objective {
-		return k
+		return nil
 	}
-	for i, w := range c.risen.work() {
-		n := c.risen.cases[i]
-		if w > top && slices.Contains(c.joined, n) && !slices.Contains(already, n) {
-			k, top = n, w
+	var out []int
+	most, top := -1, 0.0
+	for i, w := range c.layout.work() {
+		k := c.layout.cases[i]
+		if slices.Contains(already, k) {
+			continue
+		}
+		if w > governShare {
+			out = append(out, k)
+		}
+		if w > top {
+			most, top = k, w
 		}
 	}
-	return k
+	if out == nil && most >= 0 {
+		out = []int{most}
+	}
+	return out
 }
 
-// riseShare is the share of the gap by which a case must make the layout dearer to govern.
-const riseShare = 0.02
+// riseShare is the share of the gap by which cases must make the layout dearer to govern. governShare is the share of the
+// work of all loads from which a case joins those that govern at once: over few bars more cases seem to govern than do
+// over all candidates, and each makes the program dearer.
+const (
+	riseShare   = 0.02
+	governShare = 0.02
+)
 
 // heavy returns the pairs without the thinnest, which together cost at most a share of the objective.
 func heavy(t trimmed, share float64) []pair {
@@ -191,7 +215,7 @@ func (st *study) over(ctx context.Context, pairs []pair, dearer []float64, cases
 	for i := range dearer {
 		p.Bars.Cost[i] *= dearer[i]
 	}
-	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: math.Max(overGap*gap, 1e-8)})
+	sol, err := st.opt.Solver.Solve(ctx, p, nil, lp.Settings{Gap: math.Max(overGap*gap, 1e-8), Iterations: smallIterations})
 	if err != nil || sol.Raw || sol.Status != lp.Optimal {
 		return trimmed{}, false
 	}

@@ -127,9 +127,11 @@ func (st *study) finish(v *solved, d *design) {
 	}
 	r.Bound, r.WorstViolation = math.Max(v.bestBound, 0), v.bestWorst
 	r.Displacement = zeroMotion(st.s)
-	if v.best != nil && v.bestBound > 0 {
-		for i, k := range v.cases {
-			r.Displacement[k] = v.best[i]
+	if v.bestBound > 0 {
+		for k, u := range v.best {
+			if u != nil {
+				r.Displacement[k], r.Governs[k] = u, true
+			}
 		}
 	}
 	if d == nil {

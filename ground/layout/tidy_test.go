@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"slices"
 	"testing"
 
 	"boughwork/geom"
@@ -113,4 +114,16 @@ func TestStudyIsTidy(t *testing.T) {
 	if len(r.Bars) >= untidy {
 		t.Errorf("%d bars for six cases; one case has %d before it is tidied", len(r.Bars), untidy)
 	}
+}
+
+// above returns the pairs whose area is above a share of the largest.
+func above(t trimmed, share float64) []pair {
+	area := t.sol.Area[:len(t.pairs)]
+	var out []pair
+	for i, p := range t.pairs {
+		if area[i] > share*slices.Max(area) {
+			out = append(out, p)
+		}
+	}
+	return out
 }

@@ -111,9 +111,6 @@ func (sys *system) answer(p *lp.Problem, x *iterate) *lp.Solution {
 			sol.Force[c][i] = x.q[i*s.cases+c] * s.force
 		}
 	}
-	if s.free() {
-		sol.Displacement = zeros(s.cases, s.rows)
-	}
 	p.Settle(sol.Displacement)
 	sol.Bound, _ = lp.Bound(p, sol.Displacement)
 	sol.Raw = s.broken(x) || largest(sys.unbalanced(x.q, x.a)) > balanceShare

@@ -47,6 +47,8 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 		switch {
 		case sys.converged(r, primal, dual, gap, set):
 			return outcome{lp.Optimal, it, warm}, nil
+		case s.free() && sys.proves(x):
+			return outcome{lp.NoEquilibrium, it, warm}, nil
 		case it >= set.Iterations:
 			return outcome{lp.IterationLimit, it, warm}, nil
 		case stuck >= 4 || math.IsNaN(primal+dual) || sys.hopeless(it-done, r, primal, dual):
@@ -76,6 +78,30 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 		}
 	}
 }
+
+// proves reports whether the displacements show that fixed bars cannot carry the loads: these do more work than the bars
+// can absorb, by more than rounding (Farkas's lemma).
+func (sys *system) proves(x *iterate) bool {
+	s := sys.s
+	work, absorbed := 0.0, 0.0
+	for c := range s.cases {
+		for row, f := range s.load[c] {
+			work += f * x.u[sys.base[row]+int32(c)*sys.stride[row]]
+		}
+	}
+	for i := range s.bars {
+		if v := sys.price(i, x.u); v != 0 {
+			if math.IsInf(s.up[i], 1) {
+				return false
+			}
+			absorbed += s.up[i] * v
+		}
+	}
+	return work > (1+provenWork)*math.Max(absorbed, 0) && work > 0
+}
+
+// provenWork is the share by which work must exceed what bars absorb: well above the rounding of the sums.
+const provenWork = 1e-6
 
 // hopeless reports whether a start out of balance shows no sign of coming into it after so many iterations.
 func (sys *system) hopeless(iterations int, r residuals, primal, dual float64) bool {

@@ -88,11 +88,18 @@ func (s Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set l
 		return solveFrom(ctx, p, sys, nil, sys.start(d), set, 0)
 	}
 	sys.patience = patience
-	sol, err := solveFrom(ctx, p, sys, nil, sys.start(d), set, 0)
-	if err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled {
+	x := sys.start(d)
+	sol, err := solveFrom(ctx, p, sys, nil, x, set, 0)
+	if err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled || sol.Iterations >= set.Iterations {
 		return sol, err
 	}
-	return solveWithPenalty(ctx, p, sys, set)
+	if sol.Status == lp.NoEquilibrium {
+		ray := sys.noEquilibrium(p, x, outcome{iterations: sol.Iterations})
+		if work, worst := lp.CheckRay(p, ray.Displacement); work > 0 && worst == 0 {
+			return ray, nil
+		}
+	}
+	return solveWithPenalty(ctx, p, sys, set, sol.Iterations)
 }
 
 // A start whose forces are out of balance must be in balance after this many iterations; if it is not, there may be no
@@ -117,11 +124,14 @@ func (s *scaled) free() bool {
 	return !slices.Contains(s.fixed, false)
 }
 
-// solveWithPenalty solves with artificial forces, at rising prices as long as they are in use.
-func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.Settings) (*lp.Solution, error) {
+// solveWithPenalty solves with artificial forces, at rising prices as long as they are in use. done is how many iterations
+// there were before.
+func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.Settings, done int) (*lp.Solution, error) {
 	var last *lp.Solution
-	done := 0
 	for _, penalty := range penalties {
+		if done >= set.Iterations && last != nil {
+			break
+		}
 		sys, err := newSystem(plain.s.withArtificial(penalty), p)
 		if err != nil {
 			return nil, err
@@ -193,7 +203,11 @@ func solveFrom(ctx context.Context, p *lp.Problem, sys, plain *system, x *iterat
 			return sol, nil
 		}
 		done = out.iterations
-		sol := final.answer(p, final.repair(ctx, strip(x), set))
+		point := final.repair(ctx, strip(x), set)
+		if final.s.free() {
+			clear(point.u) // any forces do, and these displacements prove it
+		}
+		sol := final.answer(p, point)
 		sol.Status, sol.Iterations = out.status, done
 		if out.warm != nil {
 			warm = sys.keep(out.warm)
