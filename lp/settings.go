@@ -13,6 +13,9 @@ type Settings struct {
 	// Absolute is an absolute gap, in units of the objective, that is good enough as well. Default 0: none. For problems
 	// whose objective may be as good as zero.
 	Absolute float64
+	// Ceiling is an objective above which an answer is of no use: a solve may end, with status IterationLimit, as soon as
+	// it sees that the objective must be larger. Default 0: none.
+	Ceiling float64
 	// Residual is the largest unbalanced force that is left at a row, relative to the largest load. Default 1e-9: an
 	// order below the 1e-8 that the record promises.
 	Residual float64
@@ -52,6 +55,8 @@ func (s Settings) WithDefaults() (Settings, error) {
 		return s, fmt.Errorf("lp: residual %g: want a number between 0 and 1", s.Residual)
 	case !(s.Absolute >= 0):
 		return s, fmt.Errorf("lp: absolute gap %g: want zero or a positive number", s.Absolute)
+	case !(s.Ceiling >= 0):
+		return s, fmt.Errorf("lp: ceiling %g: want zero or a positive number", s.Ceiling)
 	case s.Iterations < 0:
 		return s, fmt.Errorf("lp: %d iterations: want a positive number", s.Iterations)
 	}

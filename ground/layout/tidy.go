@@ -37,7 +37,7 @@ func (st *study) tidy(ctx context.Context, t trimmed) []trimmed {
 		st.say("tidying", float64(pass)/tidyPasses, t.solved)
 		last := out[0]
 		from := last
-		if next, ok := st.over(ctx, last.pairs, dearer(last, budget), last.cases, last.bestBound, st.opt.Gap); ok && next.sol.Objective <= budget {
+		if next, ok := st.over(ctx, last.pairs, dearer(last, budget), last.cases, last.bestBound, st.opt.Gap, 0); ok && next.sol.Objective <= budget {
 			from = next
 		}
 		cuts = st.cut(ctx, &from, cuts, budget)
@@ -53,11 +53,11 @@ func (st *study) tidy(ctx context.Context, t trimmed) []trimmed {
 // bolder than the one that did are not tried again.
 func (st *study) cut(ctx context.Context, t *trimmed, cuts []float64, budget float64) []float64 {
 	for i, share := range cuts {
-		pairs := heavy(*t, share*st.opt.Gap)
+		pairs := st.braced(*t, heavy(*t, share*st.opt.Gap))
 		if len(pairs) == len(t.pairs) {
 			break
 		}
-		if next, ok := st.over(ctx, pairs, nil, t.cases, t.bestBound, st.opt.Gap); ok && next.sol.Objective <= budget {
+		if next, ok := st.over(ctx, pairs, nil, t.cases, t.bestBound, st.opt.Gap, budget); ok && next.sol.Objective <= budget {
 			*t = next
 			return cuts[i:]
 		}

@@ -90,7 +90,7 @@ func (s Solver) Solve(ctx context.Context, p *lp.Problem, start *lp.Start, set l
 	sys.patience = patience
 	x := sys.start(d)
 	sol, err := solveFrom(ctx, p, sys, nil, x, set, 0)
-	if err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled || sol.Iterations >= set.Iterations {
+	if err != nil || sol.Status == lp.Optimal || sol.Status == lp.Cancelled || sol.Status == lp.IterationLimit {
 		return sol, err
 	}
 	if sol.Status == lp.NoEquilibrium {
@@ -148,6 +148,11 @@ func solveWithPenalty(ctx context.Context, p *lp.Problem, plain *system, set lp.
 			return sol, nil
 		}
 		done = out.iterations
+		if out.status == lp.IterationLimit && set.Ceiling > 0 {
+			sol := plain.answer(p, sys.withoutArtificial(x))
+			sol.Status, sol.Iterations = lp.IterationLimit, done
+			return sol, nil
+		}
 		if !sys.leans(x) {
 			sol, err := solveFrom(ctx, p, sys, plain, x, set, done)
 			if err != nil || sol.Status != lp.Trouble {
