@@ -271,3 +271,21 @@ func TestEndedContext(t *testing.T) {
 		t.Error("elastic forces from a context that has ended")
 	}
 }
+
+// A solve whose answer is of no use above some objective must end early and not claim an optimum; one whose answer is below
+// it must not be cut short.
+func TestCeilingEndsASolve(t *testing.T) {
+	p := grid(3, 3, 3, 3, 2, 1.8)
+	full, err := interior.Solver{}.Solve(context.Background(), p, nil, lp.Settings{})
+	if err != nil || full.Status != lp.Optimal {
+		t.Fatal(full, err)
+	}
+	low, err := interior.Solver{}.Solve(context.Background(), p, nil, lp.Settings{Ceiling: 0.5 * full.Objective})
+	if err != nil || low.Status != lp.IterationLimit || low.Iterations >= full.Iterations {
+		t.Errorf("ceiling below the optimum: status %v after %d iterations of %d, %v", low.Status, low.Iterations, full.Iterations, err)
+	}
+	high, err := interior.Solver{}.Solve(context.Background(), p, nil, lp.Settings{Ceiling: 1.01 * full.Objective})
+	if err != nil || high.Status != lp.Optimal || high.Objective != full.Objective {
+		t.Errorf("ceiling above the optimum: status %v, objective %v, want %v; %v", high.Status, high.Objective, full.Objective, err)
+	}
+}
