@@ -25,6 +25,7 @@ type Summary struct {
 	Gap          float64 // (objective - bound) / objective
 
 	Cases, Governing int // all cases; cases in which the layout was solved
+	Omitted          int // combinations that cannot govern and were left out
 
 	LargestReaction Extreme // by magnitude of the force, at a mark of a node
 	LargestDown     Extreme // largest pressing of a support, as a positive number
@@ -76,6 +77,7 @@ func Summarise(rec *layout.Record) Summary {
 			s.Feet++
 		}
 	}
+	s.Omitted = len(rec.OmittedCases)
 	for _, cs := range rec.Cases {
 		if cs.Governs {
 			s.Governing++

@@ -57,7 +57,7 @@ func TestGrow(t *testing.T) {
 		"Shelter\n  status            optimal: the gap that the brief asks for is reached\n  volume            # m#\n",
 		"  bound             # m#: no layout on this ground structure has a smaller objective\n  gap               # %\n",
 		"  mass              # kg of steel S#\n  bars              #, # m in all, chosen from # candidates\n  joints            #, of which # feet\n",
-		"  cases             #, of which # govern\n  largest reaction  # kN at ",
+		"  cases             #, of which # govern; # more that cannot govern are left out (omitted_cases in layout.json)\n  largest reaction  # kN at ",
 		"  verified          # checks of the record by itself passed\n",
 		"cautions\n",
 		"\ndone in # s\n",

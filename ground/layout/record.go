@@ -18,12 +18,14 @@ type Record struct {
 	JointCostM float64        `json:"joint_cost_m"`
 	Deck       string         `json:"deck"` // free, diaphragm or held
 
-	Nodes      []RecordNode      `json:"nodes"`
-	Cases      []RecordCase      `json:"cases"`
-	Diaphragms []RecordDiaphragm `json:"diaphragms"`
-	Footings   []RecordFooting   `json:"footings"` // zones that limit or charge their reactions
-	Bars       []RecordBar       `json:"bars"`
-	Candidates RecordCandidates  `json:"candidates"`
+	Nodes []RecordNode `json:"nodes"`
+	Cases []RecordCase `json:"cases"`
+	// OmittedCases names combinations that whatever carries the cases carries too; they are in no list of this record.
+	OmittedCases []string          `json:"omitted_cases,omitempty"`
+	Diaphragms   []RecordDiaphragm `json:"diaphragms"`
+	Footings     []RecordFooting   `json:"footings"` // zones that limit or charge their reactions
+	Bars         []RecordBar       `json:"bars"`
+	Candidates   RecordCandidates  `json:"candidates"`
 
 	Certificate RecordCertificate `json:"certificate"`
 	// Collapse is the evidence that no layout exists; absent otherwise.

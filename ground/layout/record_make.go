@@ -39,6 +39,7 @@ func NewRecord(s *ground.Structure, r *Result, meta Meta) *Record {
 	for _, n := range s.Nodes {
 		rec.Nodes = append(rec.Nodes, RecordNode{XYZ: n.At.Array(), Fixed: n.Fixed, Role: n.Role.String()})
 	}
+	rec.OmittedCases = slices.Clone(s.Omitted)
 	for k, c := range s.Cases {
 		rc := RecordCase{Name: c.Name, Gravity: c.Gravity, Governs: k < len(r.Governs) && r.Governs[k], Loads: [][4]float64{}}
 		for _, l := range c.Loads {

@@ -86,7 +86,11 @@ func (g *growth) summariseLayout(row func(name, format string, args ...any)) {
 	}
 	row("bars", "%s", bars)
 	row("joints", "%d, of which %d feet", s.Joints, s.Feet)
-	row("cases", "%d, of which %d govern", s.Cases, s.Governing)
+	left := ""
+	if s.Omitted > 0 {
+		left = fmt.Sprintf("; %d more that cannot govern are left out (omitted_cases in layout.json)", s.Omitted)
+	}
+	row("cases", "%d, of which %d govern%s", s.Cases, s.Governing, left)
 	for _, e := range []struct {
 		name string
 		at   export.Extreme
