@@ -86,7 +86,7 @@ least material, with a bound that no layout on the same ground structure can go 
 	root.SetHelpTemplate(helpTemplate)
 	root.SuggestionsMinimumDistance = 2
 	root.CompletionOptions.DisableDefaultCmd = true
-	root.AddCommand(newCommand(), growCommand(), verifyCommand(), settingsCommand())
+	root.AddCommand(newCommand(), growCommand(), verifyCommand(), benchCommand(), settingsCommand())
 	return root
 }
 

@@ -31,7 +31,7 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 	out := conclusion{hopeless: -1, stuck: -1}
 	gap := math.Max(st.opt.Gap, v.gap()) // a loose layout needs no exact design
 	t := st.few(ctx, v, gap)
-	given := map[int]bool{}
+	seen := history{map[int]bool{}, map[int]bool{}}
 	for range moreCases {
 		out.layout = t
 		d, failed, err := st.complete(ctx, t, gap)
@@ -47,7 +47,7 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 				return out, nil
 			}
 		}
-		next, err := st.join(ctx, t, failed, gap, given, &out)
+		next, err := st.join(ctx, t, failed, gap, seen, &out)
 		if err != nil || ctx.Err() != nil || out.hopeless >= 0 || out.stuck >= 0 {
 			return out, err
 		}
@@ -74,7 +74,7 @@ func (st *study) conclude(ctx context.Context, v *solved) (conclusion, error) {
 // join returns a layout over few bars for some more cases. Each gets the bars that it wants. A case that wants next to
 // nothing lacks a bar, not material: it gets the bars without area at first, and strengthening does the rest; if that has
 // not helped (given), and otherwise, it joins the cases that the layout is solved for.
-func (st *study) join(ctx context.Context, t trimmed, failed []int, gap float64, given map[int]bool, out *conclusion) (trimmed, error) {
+func (st *study) join(ctx context.Context, t trimmed, failed []int, gap float64, seen history, out *conclusion) (trimmed, error) {
 	want := make([]wish, len(failed))
 	err := onAllCores(len(failed), func(i int) (err error) {
 		want[i], err = st.wanted(ctx, t, failed[i])
@@ -83,19 +83,19 @@ func (st *study) join(ctx context.Context, t trimmed, failed []int, gap float64,
 	if err != nil || ctx.Err() != nil {
 		return t, err
 	}
-	pairs, cases := t.pairs, t.cases
+	pairs, cases := t.pairs, st.working(t, seen)
 	for i, k := range failed {
 		if !want[i].able {
 			out.hopeless = k
 			return t, nil
 		}
 		pairs = union(pairs, want[i].bars)
-		if given[k] || want[i].cost > givenShare*gap*t.sol.Objective {
+		if seen.given[k] || want[i].cost > givenShare*gap*t.sol.Objective {
 			cases = with(cases, k)
 		}
-		given[k] = true
+		seen.given[k] = true
 	}
-	if len(cases) == len(t.cases) {
+	if !slices.ContainsFunc(cases, func(k int) bool { return !slices.Contains(t.cases, k) }) { // none joins
 		if len(pairs) > len(t.pairs) {
 			return st.extended(t, pairs), nil
 		}
@@ -109,6 +109,34 @@ func (st *study) join(ctx context.Context, t trimmed, failed []int, gap float64,
 	}
 	return next, nil
 }
+
+// working returns the cases of t whose loads do work, and those that were let go once already: the areas carry the others
+// anyway, or nearly, and each makes the program dearer.
+func (st *study) working(t trimmed, seen history) []int {
+	if len(t.cases) <= fewCases {
+		return t.cases
+	}
+	var out []int
+	for i, w := range t.work() {
+		k := t.cases[i]
+		if w > workingShare || seen.letGo[k] {
+			out = append(out, k)
+			continue
+		}
+		seen.letGo[k], seen.given[k] = true, true
+	}
+	return out
+}
+
+// history is what was tried for cases: bars were given without joining; the case was let go.
+type history struct{ given, letGo map[int]bool }
+
+// fewCases is how many cases a program over few bars may have before those without work are let go; workingShare is the
+// share of the work of all loads that counts.
+const (
+	fewCases     = 5
+	workingShare = 1e-3
+)
 
 // givenShare is the share of the gap that a case may cost which gets its bars without joining: a part of what strengthening
 // may cost for all of them.
