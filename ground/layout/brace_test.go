@@ -86,3 +86,38 @@ func TestExtendedKeepsTheLayout(t *testing.T) {
 		}
 	}
 }
+
+// A start for more cases must be balanced in all of them and no bar overloaded: a bar out of place would make it a worse
+// start than none, and nothing else would show it.
+func TestSeedIsALayout(t *testing.T) {
+	s := canopy(4)
+	st := begun(s, 1e-3)
+	ctx := context.Background()
+	if _, err := st.rank(ctx); err != nil {
+		t.Fatal(err)
+	}
+	v, err := st.grow(ctx, []int{0}, 1e-2, nil)
+	if err != nil || v.sol.Status != lp.Optimal {
+		t.Fatalf("status %v, %v", v.sol.Status, err)
+	}
+	all := trimmed{v, st.active.pairs}
+	few, ok := st.over(ctx, all.pairs[:len(all.pairs)*3/4], nil, []int{0, 1, 2}, v.bestBound, 1e-2, 0)
+	if !ok {
+		t.Fatal("no layout over three quarters of the bars")
+	}
+	st.warm.seed(st, few, []int{0, 2})
+	start := st.warm.start(st, []int{0, 2})
+	if start == nil {
+		t.Fatal("no start")
+	}
+	p := st.prog.problem(st.active.pairs, []int{0, 2})
+	r := lp.Check(p, &lp.Solution{Area: start.Area, Force: start.Force, Displacement: start.Displacement, Objective: 1})
+	if r.Shape != nil {
+		t.Fatal(r.Shape)
+	}
+	for k, u := range r.Unbalanced {
+		if !(u <= balanceShare) || !(r.Strength <= strengthShare) {
+			t.Errorf("case %d: %.3g of the load is unbalanced, %.3g overloaded", k, u, r.Strength)
+		}
+	}
+}

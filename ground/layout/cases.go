@@ -29,6 +29,9 @@ const (
 	growShare = 0.5
 	// missingShare is the share of the gap that is for want of cases to which the next layout is solved.
 	missingShare = 0.2
+	// seedGap is how far the small layout for all cases may be from the bound to be a start for a program with more cases:
+	// from farther away a cold start was seen to take fewer iterations.
+	seedGap = 1e-2
 	// slackShare is the share of the work of all loads below which a case does not govern.
 	slackShare = 1e-6
 )
@@ -84,6 +87,9 @@ func (st *study) allCases(ctx context.Context) (*solved, *design, error) {
 			governing = st.withoutSlack(v, governing)
 			for _, k := range more {
 				governing = with(governing, k)
+			}
+			if 1-v.bestBound/c.layout.sol.Objective < seedGap {
+				st.warm.seed(st, c.layout, governing)
 			}
 			missing := 1 - v.bestBound/c.layout.sol.Objective
 			target = math.Max(final, math.Min(firstCheck, missingShare*missing))

@@ -11,10 +11,13 @@ import (
 
 // When a design is made of a layout, bars are left out that seem to be there only because the layout is in the midst of
 // many: the first share for promising at which what is left carries the same cases at nearly the same objective, which
-// may rise by trimExcess of the gap.
+// may rise by trimExcess of the gap, or up to trimBudget of it above the bound.
 var thinShares = []float64{10, 0.1}
 
-const trimExcess = 0.2
+const (
+	trimExcess = 0.2
+	trimBudget = 0.6
+)
 
 // overGap is the share of the gap to which programs over few bars are solved; spare is the share of the gap by which their
 // loads are enlarged, so that cases that do not govern are carried with a little room.
@@ -29,7 +32,7 @@ const smallIterations = 60
 // few returns a layout for the cases of v over few of its bars.
 func (st *study) few(ctx context.Context, v *solved, gap float64) trimmed {
 	all := trimmed{v, st.active.pairs}
-	allowed := v.sol.Objective * (1 + trimExcess*gap)
+	allowed := math.Max(v.sol.Objective*(1+trimExcess*gap), v.bestBound/(1-trimBudget*gap))
 	choose := func(from trimmed) (trimmed, bool) {
 		for _, share := range thinShares {
 			t, ok := st.over(ctx, st.braced(from, st.promising(from, share)), nil, v.cases, v.bestBound, gap, allowed)

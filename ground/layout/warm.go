@@ -58,3 +58,45 @@ func (w *warm) start(st *study, cases []int) *lp.Start {
 	}
 	return s
 }
+
+// seed prepares a start for a program with more cases: the areas and forces of a layout over few bars that knows them all,
+// and the displacements of the last point, zero for a case that is new: both are feasible, and as far apart as the new
+// cases make the layout dearer.
+func (w *warm) seed(st *study, t trimmed, cases []int) {
+	if w.point == nil {
+		return
+	}
+	place := make(map[int64]int, len(t.pairs))
+	for i, p := range t.pairs {
+		place[p.key()] = i
+	}
+	spread := func(x []float64) []float64 {
+		out := make([]float64, 0, len(st.active.pairs)+len(x)-len(t.pairs))
+		for _, p := range st.active.pairs {
+			v := 0.0
+			if i, ok := place[p.key()]; ok {
+				v = x[i]
+			}
+			out = append(out, v)
+		}
+		return append(out, x[len(t.pairs):]...)
+	}
+	point := &lp.Start{Area: spread(t.sol.Area)}
+	for _, k := range cases {
+		i := slices.Index(t.cases, k)
+		if i < 0 {
+			return
+		}
+		point.Force = append(point.Force, spread(t.sol.Force[i]))
+		u := make([]float64, len(t.sol.Displacement[i]))
+		if j := slices.Index(w.cases, k); j >= 0 {
+			copy(u, w.point.Displacement[j])
+		}
+		point.Displacement = append(point.Displacement, u)
+	}
+	at := make(map[int64]int, len(st.active.pairs))
+	for i, p := range st.active.pairs {
+		at[p.key()] = i
+	}
+	*w = warm{cases: cases, at: at, bars: len(st.active.pairs), point: point}
+}
