@@ -64,28 +64,19 @@ type growth struct {
 	solver lp.Solver
 }
 
-// stage is a step of a job: what it does, and what came out of it in a few words.
-type stage struct {
-	name string
-	do   func(context.Context) (string, error)
-}
-
 // run is the order of the stages.
 func (g *growth) run(ctx context.Context) error {
-	if err := g.through(ctx, g.input()); err != nil {
-		return err
-	}
-	return g.through(ctx, []stage{{StageLayout, g.layout}, {StageVerify, g.verify}, {StageFiles, g.write}})
-}
-
-// input is the stages that lead to the ground structure.
-func (g *growth) input() []stage {
-	return []stage{{StageBrief, g.readBrief}, {StageSite, g.readSite}, {StageGround, g.build}}
-}
-
-// through does some stages in order.
-func (g *growth) through(ctx context.Context, stages []stage) error {
-	for _, s := range stages {
+	for _, s := range []struct {
+		name string
+		do   func(context.Context) (string, error)
+	}{
+		{StageBrief, g.readBrief},
+		{StageSite, g.readSite},
+		{StageGround, g.build},
+		{StageLayout, g.layout},
+		{StageVerify, g.verify},
+		{StageFiles, g.write},
+	} {
 		g.obs.Begin(s.name)
 		begun := time.Now()
 		result, err := s.do(ctx)
@@ -173,16 +164,20 @@ func (g *growth) build(context.Context) (string, error) {
 }
 
 func (g *growth) layout(ctx context.Context) (string, error) {
-	opt := g.options()
-	opt.Progress = func(p layout.Progress) {
-		g.obs.Step(LayoutStep(StageLayout, p))
-	}
-	res, err := layout.Solve(ctx, g.out.Structure, opt)
+	study := g.out.Study
+	res, err := layout.Solve(ctx, g.out.Structure, layout.Options{
+		Gap: study.Solve.Gap, Solver: g.solver, MaxRounds: study.Solve.Rounds,
+		Progress: func(p layout.Progress) {
+			part, done := layoutPart(p)
+			g.obs.Step(Step{Stage: StageLayout, Part: part, Done: done, Round: p.Round, Cases: p.Cases, AllOf: p.AllOf,
+				Bars: p.Bars, Volume: p.Volume, Bound: p.Bound, Gap: p.Gap})
+		},
+	})
 	if err != nil {
 		return "", err
 	}
 	g.out.Record = layout.NewRecord(g.out.Structure, res, layout.Meta{
-		MadeBy: g.job.MadeBy, BriefSHA256: g.out.Study.SHA256, Context: sketchSite(g.out.Site),
+		MadeBy: g.job.MadeBy, BriefSHA256: study.SHA256, Context: sketchSite(g.out.Site),
 	})
 	c := g.out.Record.Certificate
 	switch {
@@ -212,13 +207,6 @@ func layoutPart(p layout.Progress) (part string, done float64) {
 		return "tidying", 1 - shareOfTidying*(1-p.Done)
 	}
 	return p.Stage, 0
-}
-
-// LayoutStep turns a report from the search for a layout into one for an observer, under the given name of the stage.
-func LayoutStep(stage string, p layout.Progress) Step {
-	part, done := layoutPart(p)
-	return Step{Stage: stage, Part: part, Done: done, Round: p.Round, Cases: p.Cases, AllOf: p.AllOf,
-		Bars: p.Bars, Volume: p.Volume, Bound: p.Bound, Gap: p.Gap}
 }
 
 // count writes a number with its noun.
