@@ -24,6 +24,7 @@ func build(t *testing.T, name string) *ground.Structure {
 
 // Every problem has the nodes, supports and cases that its definition says, and its loads add up to what each case says.
 func TestProblemsAreAsDefined(t *testing.T) {
+	hanging := []geom.Vec{{Z: -0.01}} // on 100 m: as 1 N on 1 m
 	three := []geom.Vec{{Z: -1}, {Z: -0.5}, {Z: -0.5}}
 	five := append(three[:3:3], geom.Vec{X: 0.1, Z: -1}, geom.Vec{Y: 0.1, Z: -1})
 	twelve := append(three[:3:3], geom.Vec{Z: -0.5}, geom.Vec{Z: -0.5},
@@ -33,13 +34,13 @@ func TestProblemsAreAsDefined(t *testing.T) {
 		nodes, held int
 		loads       []geom.Vec
 	}{
-		"cantilever-21x11":   {231, 11, three[:1]},
-		"cantilever-41x21":   {861, 21, three[:1]},
-		"cantilever-61x31":   {1891, 31, three[:1]},
-		"cantilever-81x41":   {3321, 41, three[:1]},
-		"cantilever-121x61":  {7381, 61, three[:1]},
-		"cantilever-161x81":  {13041, 81, three[:1]},
-		"cantilever-151x101": {15251, 101, three[:1]},
+		"cantilever-21x11":   {231, 11, hanging},
+		"cantilever-41x21":   {861, 21, hanging},
+		"cantilever-61x31":   {1891, 31, hanging},
+		"cantilever-81x41":   {3321, 41, hanging},
+		"cantilever-121x61":  {7381, 61, hanging},
+		"cantilever-161x81":  {13041, 81, hanging},
+		"cantilever-151x101": {15251, 101, hanging},
 		"canopy-2m-1":        {605, 16, three[:1]}, // four feet around each of four points
 		"canopy-2m-3":        {605, 16, three},
 		"canopy-2m-5":        {605, 16, five},
@@ -90,9 +91,9 @@ func TestProblemsAreAsDefined(t *testing.T) {
 
 // The load of a cantilever hangs in the middle of its right edge, and its plane is held.
 func TestCantileverInItsPlace(t *testing.T) {
-	for name, reach := range map[string]float64{"cantilever-21x11": 2, "cantilever-151x101": 1.5} {
+	for name, reach := range map[string]float64{"cantilever-21x11": 200, "cantilever-151x101": 150} {
 		s := build(t, name)
-		if at := s.Nodes[s.Cases[0].Loads[0].Node].At; at != (geom.Vec{X: reach, Z: 0.5}) {
+		if at := s.Nodes[s.Cases[0].Loads[0].Node].At; at != (geom.Vec{X: reach, Z: 50}) {
 			t.Errorf("%s: the load is at %v", name, at)
 		}
 		for _, n := range s.Nodes {
@@ -142,6 +143,22 @@ func TestCandidates(t *testing.T) {
 	}
 	if got := ground.NewCandidates(build(t, "canopy-2m-1")).Count(); got < 150_000 || got > 151_500 {
 		t.Errorf("canopy-2m-1: %d candidates, want about 151 000", got)
+	}
+}
+
+// On a lattice the line through two nodes passes every other node at a distance of at least the step over the length in
+// steps, or goes through it. That must be more than what counts as passing through, or candidates are lost.
+func TestNoCandidateIsLost(t *testing.T) {
+	for _, p := range Problems {
+		s := p.Build()
+		step, far := math.Inf(1), 0.0
+		for _, n := range s.Nodes[1:] {
+			l := n.At.Sub(s.Nodes[0].At).Norm() // the first node is a corner, the last the one across
+			step, far = math.Min(step, l), math.Max(far, l)
+		}
+		if least := step * step / far; least < 2*ground.ThroughNode {
+			t.Errorf("%s: a bar of %g m may pass %g m from a node", p.Name, far, least)
+		}
 	}
 }
 
