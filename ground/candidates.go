@@ -55,10 +55,12 @@ func (c *Candidates) Plausible(i, j int) bool {
 // Clear is the rest of Allowed: through no node, no keep-clear, inside the envelope.
 func (c *Candidates) Clear(i, j int) bool {
 	a, b := c.s.Nodes[i].At, c.s.Nodes[j].At
-	if c.near.through(int32(i), int32(j), a, b) || c.obstacles.Blocked(a, b) {
-		return false
-	}
-	return c.envelope.Contains(a, b)
+	return !c.near.through(int32(i), int32(j), a, b) && c.unobstructed(a, b)
+}
+
+// unobstructed reports whether the segment enters no keep-clear and leaves no envelope.
+func (c *Candidates) unobstructed(a, b geom.Vec) bool {
+	return !c.obstacles.Blocked(a, b) && c.envelope.Contains(a, b)
 }
 
 // Factor returns the cost factor w of the pair.
@@ -73,10 +75,19 @@ func (c *Candidates) Factor(i, j int) float64 {
 // Count returns the number of candidates. It tests every pair, on all cores.
 func (c *Candidates) Count() int64 {
 	var total atomic.Int64
+	nodes := len(c.s.Nodes)
+	type room struct {
+		scan    *rowScan
+		blocked []bool
+	}
+	rooms := sync.Pool{New: func() any { return &room{newRowScan(nodes), make([]bool, nodes)} }}
 	c.EachRow(func(i int) {
+		r := rooms.Get().(*room)
+		defer rooms.Put(r)
+		r.scan.blocked(i, c.near.at, r.blocked)
 		n := int64(0)
-		for j := i + 1; j < len(c.s.Nodes); j++ {
-			if c.Allowed(i, j) {
+		for j := i + 1; j < nodes; j++ {
+			if !r.blocked[j] && c.Plausible(i, j) && c.unobstructed(c.s.Nodes[i].At, c.s.Nodes[j].At) {
 				n++
 			}
 		}

@@ -64,29 +64,88 @@ func planar(s *ground.Structure) bool {
 	return false
 }
 
+// near is a node at a distance.
+type near struct {
+	j int
+	l float64
+}
+
 // nearest returns the shortest candidates of node i, and all that are as short as the last of them.
 func nearest(s *ground.Structure, can *ground.Candidates, i, number int) []pair {
-	type near struct {
-		j int
-		l float64
-	}
 	var all []near
 	for j := range s.Nodes {
 		if j != i && can.Plausible(i, j) {
 			all = append(all, near{j, s.Nodes[j].At.Sub(s.Nodes[i].At).Norm()})
 		}
 	}
-	slices.SortFunc(all, func(a, b near) int { return cmp.Or(cmp.Compare(a.l, b.l), cmp.Compare(a.j, b.j)) })
-	var out []pair
-	for _, n := range all {
-		if len(out) >= number {
-			break
+	for most := lookFactor * number; ; most *= lookFactor {
+		var out []pair
+		for _, n := range shortest(all, most) {
+			if len(out) >= number {
+				return out
+			}
+			if can.Clear(i, n.j) {
+				out = append(out, newPair(s, can, i, n.j))
+			}
 		}
-		if can.Clear(i, n.j) {
-			out = append(out, newPair(s, can, i, n.j))
+		if most >= len(all) {
+			return out
 		}
 	}
+}
+
+// lookFactor is how many times as many nodes as wanted are looked at first, since some are not clear.
+const lookFactor = 4
+
+// shortest returns the given number of nearest nodes, and all that are as near as the last, in order of distance.
+func shortest(all []near, number int) []near {
+	limit := math.Inf(1)
+	if number < len(all) {
+		l := make([]float64, len(all))
+		for i, n := range all {
+			l[i] = n.l
+		}
+		limit = smallest(l, number)
+	}
+	var out []near
+	for _, n := range all {
+		if n.l <= limit {
+			out = append(out, n)
+		}
+	}
+	slices.SortFunc(out, func(a, b near) int { return cmp.Or(cmp.Compare(a.l, b.l), cmp.Compare(a.j, b.j)) })
 	return out
+}
+
+// smallest returns the n-th smallest of x, counted from 0, and changes the order of x (Hoare 1961).
+func smallest(x []float64, n int) float64 {
+	lo, hi := 0, len(x)-1
+	for lo < hi {
+		pivot := x[(lo+hi)/2]
+		i, j := lo, hi
+		for i <= j {
+			for x[i] < pivot {
+				i++
+			}
+			for x[j] > pivot {
+				j--
+			}
+			if i <= j {
+				x[i], x[j] = x[j], x[i]
+				i++
+				j--
+			}
+		}
+		switch {
+		case n <= j:
+			hi = j
+		case n >= i:
+			lo = i
+		default:
+			return x[n]
+		}
+	}
+	return x[n]
 }
 
 func newPair(s *ground.Structure, can *ground.Candidates, i, j int) pair {
