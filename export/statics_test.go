@@ -17,12 +17,14 @@ const balanceTolerance = 1e-9
 func TestReactionsOfTripod(t *testing.T) {
 	rec := tripod()
 	reactions := Reactions(rec)
+	share := 0.0
 	for k, c := range rec.Cases {
 		weight := 0.0
 		for _, b := range rec.Bars {
 			weight += rec.Material.DensityKgM3 * ground.Gravity * b.AreaM2 * lengthOf(rec, b) / 1e3
 		}
 		down := -c.Loads[0][3] + c.Gravity*weight
+		share = math.Max(share, c.Gravity*weight/down)
 		for i := range 3 {
 			r := reactions[k][i]
 			if math.Abs(r.Z-down/3) > balanceTolerance {
@@ -33,6 +35,9 @@ func TestReactionsOfTripod(t *testing.T) {
 				t.Errorf("case %q, foot %d: reaction %v points outwards", c.Name, i, r)
 			}
 		}
+	}
+	if got := Summarise(rec).WeightShare; math.Abs(got-share) > 1e-12 || share == 0 {
+		t.Errorf("the bars weigh %g of what acts, want %g", got, share)
 	}
 }
 

@@ -24,6 +24,10 @@ type Summary struct {
 	BoundM3      float64 // no layout on the same ground structure has a smaller objective
 	Gap          float64 // (objective - bound) / objective
 
+	// WeightShare is the largest share that the weight of the bars has in the loads of a case, by sums of magnitudes; 0 where
+	// bars do not weigh. A large one means that the bars serve as ballast.
+	WeightShare float64
+
 	Cases, Governing int // all cases; cases in which the layout was solved
 	Omitted          int // combinations that cannot govern and were left out
 
@@ -78,6 +82,7 @@ func Summarise(rec *layout.Record) Summary {
 		}
 	}
 	s.Omitted = len(rec.OmittedCases)
+	s.WeightShare = weightShare(rec)
 	for _, cs := range rec.Cases {
 		if cs.Governs {
 			s.Governing++
@@ -87,6 +92,20 @@ func Summarise(rec *layout.Record) Summary {
 		s.largestReactions(rec, m, Reactions(rec))
 	}
 	return s
+}
+
+func weightShare(rec *layout.Record) float64 {
+	top := 0.0
+	for k, cs := range rec.Cases {
+		loads := 0.0
+		for _, l := range cs.Loads {
+			loads += geom.Vec{X: l[1], Y: l[2], Z: l[3]}.Norm()
+		}
+		if weight := math.Abs(weightOf(rec, k).Force.Z); weight > 0 {
+			top = math.Max(top, weight/(weight+loads))
+		}
+	}
+	return top
 }
 
 func (s *Summary) largestReactions(rec *layout.Record, m marks, reactions [][]geom.Vec) {

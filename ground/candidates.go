@@ -1,6 +1,7 @@
 package ground
 
 import (
+	"context"
 	"math"
 	"runtime"
 	"sync"
@@ -74,6 +75,12 @@ func (c *Candidates) Factor(i, j int) float64 {
 
 // Count returns the number of candidates. It tests every pair, on all cores.
 func (c *Candidates) Count() int64 {
+	n, _ := c.CountUntil(context.Background())
+	return n
+}
+
+// CountUntil is Count, but returns the error of the context if that ends first.
+func (c *Candidates) CountUntil(ctx context.Context) (int64, error) {
 	var total atomic.Int64
 	nodes := len(c.s.Nodes)
 	type room struct {
@@ -82,6 +89,9 @@ func (c *Candidates) Count() int64 {
 	}
 	rooms := sync.Pool{New: func() any { return &room{newRowScan(nodes), make([]bool, nodes)} }}
 	c.EachRow(func(i int) {
+		if ctx.Err() != nil {
+			return
+		}
 		r := rooms.Get().(*room)
 		defer rooms.Put(r)
 		r.scan.blocked(i, c.near.at, r.blocked)
@@ -93,7 +103,10 @@ func (c *Candidates) Count() int64 {
 		}
 		total.Add(n)
 	})
-	return total.Load()
+	if err := ctx.Err(); err != nil {
+		return 0, err
+	}
+	return total.Load(), nil
 }
 
 // EachRow calls f once for every node, from several goroutines.

@@ -108,7 +108,7 @@ type RecordBar struct {
 // enter no keep-clear prism, stay inside the envelope if there is one, pass within through_node_m of no other node,
 // do not join two wholly fixed nodes, and obey the rule for roof bars.
 type RecordCandidates struct {
-	Count        int64         `json:"count"`
+	Count        int64         `json:"count"` // -1 if the study ended before they were counted
 	MaxLengthM   float64       `json:"max_length_m"`
 	MinLengthM   float64       `json:"min_length_m"`
 	ThroughNodeM float64       `json:"through_node_m"`

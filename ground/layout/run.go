@@ -15,7 +15,8 @@ import (
 // sense; that no layout exists, that the context ended or that a limit was reached is the Status of the result, which
 // then holds the best layout found so far, if any.
 func Solve(ctx context.Context, s *ground.Structure, opt Options) (*Result, error) {
-	if err := validate(s); err != nil {
+	err := validate(s)
+	if err != nil {
 		return nil, err
 	}
 	if opt.Gap == 0 {
@@ -34,7 +35,11 @@ func Solve(ctx context.Context, s *ground.Structure, opt Options) (*Result, erro
 	st := &study{s: s, prog: newProgram(s), can: can, pricer: pricer{s, can}, opt: opt, letGo: map[int]bool{},
 		result: &Result{Solver: opt.Solver.Name()}}
 	st.say("candidates", 0, nil)
-	st.result.Candidates = can.Count()
+	if st.result.Candidates, err = can.CountUntil(ctx); err != nil {
+		st.result.Status, st.result.Candidates = lp.Cancelled, uncounted
+		return st.result, nil
+	}
+	st.say("layout", 0, nil)
 	st.active = newActive(s, can)
 	v, d, err := st.allCases(ctx)
 	switch {
@@ -51,6 +56,9 @@ func Solve(ctx context.Context, s *ground.Structure, opt Options) (*Result, erro
 	st.finish(v, d)
 	return st.result, nil
 }
+
+// uncounted stands for the number of candidates in a study that ended before they were counted.
+const uncounted = -1
 
 func validate(s *ground.Structure) error {
 	switch m := s.Material; {

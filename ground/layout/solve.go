@@ -41,7 +41,7 @@ type Result struct {
 	WorstViolation float64
 	Displacement   [][]geom.Vec // [case][node], m3/N, scaled to be feasible; zero at supports
 	Governs        []bool       // [case]: the layout was solved for it
-	Candidates     int64
+	Candidates     int64        // -1 if the study ended before they were counted
 	Rounds         []Round
 	Collapse       *Collapse // evidence with Status NoEquilibrium
 }

@@ -80,6 +80,9 @@ func (g *growth) summariseLayout(row func(name, format string, args ...any)) {
 	row("bound", "%.5g m3: no layout on this ground structure has a smaller objective", s.BoundM3)
 	row("gap", "%.3g %%", 100*s.Gap)
 	row("mass", "%s of %s", kilograms(s.MassKg), rec.Material.Name)
+	if s.WeightShare > ballastShare {
+		row("ballast", "the bars weigh %.0f %% of all that acts in a case: where a heavier roof or feet that hold uplift are possible, they need less", 100*s.WeightShare)
+	}
 	bars := fmt.Sprintf("%d, %.4g m in all, chosen from %d candidates", s.Bars, s.LengthM, rec.Candidates.Count)
 	if s.Kept > 0 {
 		bars += fmt.Sprintf("; %d of them kept, at no cost", s.Kept)
@@ -105,6 +108,10 @@ func (g *growth) summariseLayout(row func(name, format string, args ...any)) {
 		}
 	}
 }
+
+// ballastShare is the share of the weight of bars in what acts from which they are more than a load-bearing structure:
+// common practice has a few per cent, heavy timber ten.
+const ballastShare = 0.25
 
 // kilograms writes a mass as a person reads it.
 func kilograms(kg float64) string {
