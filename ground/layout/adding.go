@@ -20,6 +20,7 @@ type study struct {
 	result *Result
 	warm   warm
 	order  []int        // cases with loads, by falling cost of the elastic guess
+	plane  bool         // all nodes in one plane
 	letGo  map[int]bool // cases that governed once and were let go
 	rounds int
 	// Interior-point iterations of all rounds of member adding.
@@ -33,6 +34,11 @@ const (
 	roundShare = 0.1
 	goalShare  = 0.3
 )
+
+// With one case in space a start from the last round pays only from this gap down: until then too many bars are new. In a
+// plane, and with more cases, it pays
+// from the beginning.
+const warmBelow = 0.05
 
 // A candidate is worth adding from this price over its cost on.
 const worthAdding = 1 + 1e-7
@@ -70,7 +76,11 @@ func (st *study) grow(ctx context.Context, cases []int, target float64, from *so
 	gravity := st.gravity(cases)
 	for {
 		v.problem = st.prog.problem(st.active.pairs, cases)
-		sol, err := st.opt.Solver.Solve(ctx, v.problem, st.warm.start(st, cases), lp.Settings{Gap: gap})
+		start := st.warm.start(st, cases)
+		if v.sol != nil && v.gap() > warmBelow && !st.plane && len(cases) == 1 {
+			start = nil
+		}
+		sol, err := st.opt.Solver.Solve(ctx, v.problem, start, lp.Settings{Gap: gap})
 		if err != nil {
 			return nil, err
 		}

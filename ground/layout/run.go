@@ -32,7 +32,7 @@ func Solve(ctx context.Context, s *ground.Structure, opt Options) (*Result, erro
 		return nil, fmt.Errorf("layout: gap %g: want a number between 0 and 1, such as 0.001", opt.Gap)
 	}
 	can := ground.NewCandidates(s)
-	st := &study{s: s, prog: newProgram(s), can: can, pricer: pricer{s, can}, opt: opt, letGo: map[int]bool{},
+	st := &study{s: s, prog: newProgram(s), can: can, pricer: pricer{s, can}, opt: opt, letGo: map[int]bool{}, plane: planar(s),
 		result: &Result{Solver: opt.Solver.Name()}}
 	st.say("candidates", 0, nil)
 	if st.result.Candidates, err = can.CountUntil(ctx); err != nil {
