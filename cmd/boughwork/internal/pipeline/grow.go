@@ -56,6 +56,18 @@ func Grow(ctx context.Context, job Job, obs Observer) (*Outcome, error) {
 	return g.out, err
 }
 
+// Prepare does the stages of a job before the layout. The outcome then holds study, site, structure and issues, and the
+// solver is the one that the brief asks for. Errors are those of Grow.
+func Prepare(ctx context.Context, job Job) (*Outcome, lp.Solver, error) {
+	g := &growth{job: job, obs: quiet{}, out: &Outcome{}}
+	for _, do := range []func(context.Context) (string, error){g.readBrief, g.readSite, g.build} {
+		if _, err := do(ctx); err != nil {
+			return g.out, nil, err
+		}
+	}
+	return g.out, g.solver, nil
+}
+
 // growth is a job on its way.
 type growth struct {
 	job    Job
