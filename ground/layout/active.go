@@ -70,7 +70,7 @@ type near struct {
 	l float64
 }
 
-// nearest returns the shortest candidates of node i, and all that are as short as the last of them.
+// nearest returns the shortest candidates of node i, so many of them; of equally short ones those to the first nodes.
 func nearest(s *ground.Structure, can *ground.Candidates, i, number int) []pair {
 	var all []near
 	for j := range s.Nodes {
