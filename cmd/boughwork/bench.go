@@ -32,7 +32,7 @@ func benchCommand() *cobra.Command {
 		Long: `Solve problems of known size, measure what that takes, and print one JSON object a line: candidates, volume, bound,
 gap, seconds, the peak of memory in MB (1e6 bytes), the share of the time of each stage. A NAME is one of those that
 --list lists, or the file of a brief (.yaml, .yml, .toml, .json), whose study is then solved without writing files. Without
-names the problems that take little are run: ` + strings.Join(bench.Small, ", ") + `.
+names the small problems are run: ` + strings.Join(bench.Small, ", ") + `.
 Progress goes to the standard error. Ctrl-C stops the work and prints what there is.
 
 ` + exitWords,

@@ -36,8 +36,7 @@ const (
 )
 
 // With one case in space a start from the last round pays only from this gap down: until then too many bars are new. In a
-// plane, and with more cases, it pays
-// from the beginning.
+// plane, and with more cases, it pays from the beginning.
 const warmBelow = 0.05
 
 // A candidate is worth adding from this price over its cost on.

@@ -88,10 +88,10 @@ func (st *study) allCases(ctx context.Context) (*solved, *design, error) {
 			for _, k := range more {
 				governing = with(governing, k)
 			}
-			if 1-v.bestBound/c.layout.sol.Objective < seedGap {
+			missing := 1 - v.bestBound/c.layout.sol.Objective
+			if missing < seedGap {
 				st.warm.seed(st, c.layout, governing)
 			}
-			missing := 1 - v.bestBound/c.layout.sol.Objective
 			target = math.Max(final, math.Min(firstCheck, missingShare*missing))
 		case target > final:
 			target = final

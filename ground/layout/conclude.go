@@ -144,25 +144,10 @@ const givenShare = 0.05
 
 // extended returns the layout t over more pairs, which have no area.
 func (st *study) extended(t trimmed, pairs []pair) trimmed {
-	place := make(map[int64]int, len(t.pairs))
-	for i, p := range t.pairs {
-		place[p.key()] = i
-	}
-	spread := func(x []float64) []float64 {
-		out := make([]float64, 0, len(x)+len(pairs)-len(t.pairs))
-		for _, p := range pairs {
-			v := 0.0
-			if i, ok := place[p.key()]; ok {
-				v = x[i]
-			}
-			out = append(out, v)
-		}
-		return append(out, x[len(t.pairs):]...)
-	}
 	sol := *t.sol
-	sol.Area, sol.Force = spread(sol.Area), make([][]float64, len(t.sol.Force))
+	sol.Area, sol.Force = onto(pairs, t.pairs, sol.Area), make([][]float64, len(t.sol.Force))
 	for c, q := range t.sol.Force {
-		sol.Force[c] = spread(q)
+		sol.Force[c] = onto(pairs, t.pairs, q)
 	}
 	return trimmed{&solved{cases: t.cases, sol: &sol, problem: st.prog.problem(pairs, t.cases), bestBound: t.bestBound}, pairs}
 }

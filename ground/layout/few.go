@@ -60,16 +60,7 @@ func (st *study) few(ctx context.Context, v *solved, gap float64) trimmed {
 // beside them: bars that carry little but are needed.
 func (st *study) mended(ctx context.Context, all trimmed, gap, allowed float64) (trimmed, bool) {
 	pairs := st.braced(all, st.promising(all, thinShares[len(thinShares)-1]))
-	n := len(all.pairs)
-	at := make(map[int64]float64, n)
-	for i, p := range all.pairs {
-		at[p.key()] = all.sol.Area[i]
-	}
-	area := make([]float64, 0, len(pairs))
-	for _, p := range pairs {
-		area = append(area, at[p.key()])
-	}
-	some := trimmed{&solved{sol: &lp.Solution{Area: append(area, all.sol.Area[n:]...), Objective: all.sol.Objective}}, pairs}
+	some := trimmed{&solved{sol: &lp.Solution{Area: onto(pairs, all.pairs, all.sol.Area), Objective: all.sol.Objective}}, pairs}
 	want := make([]wish, len(all.cases))
 	err := onAllCores(len(want), func(i int) (err error) {
 		want[i], err = st.wanted(ctx, some, all.cases[i])
@@ -88,9 +79,9 @@ func (st *study) mended(ctx context.Context, all trimmed, gap, allowed float64) 
 // mendedExcess is the share of the gap by which a mended layout may be dearer than one of promising bars.
 const mendedExcess = 0.2
 
-// promising returns the numbers of the pairs that seem to be part of an optimal layout: near the optimum, either the area of a bar or the
-// slack of its price goes to zero, and those belong to it whose area is the larger, each measured by a natural scale (the
-// cost of a mean bar of as many as there are nodes, times share; its cost).
+// promising returns the numbers of the pairs that seem to be part of an optimal layout: near the optimum, either the area
+// of a bar or the slack of its price goes to zero, and those belong to it whose area is the larger, each measured by a
+// natural scale (the cost of a mean bar of as many as there are nodes, times share; its cost).
 func (st *study) promising(t trimmed, share float64) []int {
 	scale := share * t.sol.Objective / float64(len(st.s.Nodes))
 	var kept []int
@@ -125,6 +116,22 @@ func heavy(t trimmed, share float64) []int {
 		}
 	}
 	return kept
+}
+
+// onto carries values over pairs, and what follows them, over to other pairs: zero for a pair that is not among the first.
+// Both lists are in order.
+func onto(to, from []pair, x []float64) []float64 {
+	out := make([]float64, len(to), len(to)+len(x)-len(from))
+	j := 0
+	for i, p := range to {
+		for j < len(from) && from[j].key() < p.key() {
+			j++
+		}
+		if j < len(from) && from[j].key() == p.key() {
+			out[i] = x[j]
+		}
+	}
+	return append(out, x[len(from):]...)
 }
 
 // union joins two lists of pairs that are in order.

@@ -6,6 +6,7 @@ import (
 
 	"boughwork/geom"
 	"boughwork/ground"
+	"boughwork/lp"
 )
 
 // Tolerances of Verify, each a share: of the largest load, of the strength, of the volume, of the cost of a candidate, of
@@ -76,8 +77,8 @@ func Verify(rec *Record) (*Report, error) {
 			j.load = math.Max(j.load, l.Force.Norm())
 		}
 	}
-	if rec.Candidates.Count == uncounted && len(rec.Bars) == 0 && rec.Certificate.BoundM3 == 0 && rec.Collapse == nil {
-		return j.rep, nil // the study ended before it began, and claims nothing
+	if rec.claimsNothing() {
+		return j.rep, nil // the study ended before it began
 	}
 	j.rep.add("candidates (by which the record's count is off)", math.Abs(float64(ground.NewCandidates(s).Count()-rec.Candidates.Count)), 0,
 		"record %d", rec.Candidates.Count)
@@ -92,6 +93,13 @@ func Verify(rec *Record) (*Report, error) {
 	}
 	j.dual()
 	return j.rep, nil
+}
+
+// claimsNothing reports whether a record is that of a study which was stopped before its candidates were counted.
+func (rec *Record) claimsNothing() bool {
+	c := rec.Certificate
+	return rec.Status == lp.Cancelled.String() && rec.Candidates.Count == uncounted && len(rec.Bars) == 0 && rec.Collapse == nil &&
+		c.ObjectiveM3 == 0 && c.VolumeM3 == 0 && c.BoundM3 == 0
 }
 
 // balance sums all forces at every node in every case. What is left must be a reaction where one can act.

@@ -67,16 +67,8 @@ const freeArea = 1e-7
 func (st *study) wanted(ctx context.Context, t trimmed, k int) (wish, error) {
 	pairs := union(st.active.pairs, t.pairs)
 	n, kept := len(t.pairs), len(st.s.Kept)
-	at := map[int64]float64{}
-	for i, q := range t.pairs {
-		at[q.key()] = t.sol.Area[i]
-	}
-	area := make([]float64, len(pairs))
-	for i, q := range pairs {
-		area[i] = at[q.key()]
-	}
 	p := st.prog.problem(pairs, []int{k})
-	st.twins(p, pairs, area, t.sol.Area[n+kept:])
+	st.twins(p, pairs, onto(pairs, t.pairs, t.sol.Area[:n]), t.sol.Area[n+kept:])
 	set := lp.Settings{Gap: wantedGap, Absolute: wantedShare * st.opt.Gap * math.Max(t.sol.Objective, 1e-300)}
 	sol, err := st.opt.Solver.Solve(ctx, p, nil, set)
 	if err != nil || sol.Raw || sol.Status == lp.NoEquilibrium {

@@ -49,6 +49,7 @@ func (sys *system) run(ctx context.Context, x *iterate, gap float64, set lp.Sett
 			return outcome{lp.Optimal, it, warm}, nil
 		case s.free() && sys.proves(x):
 			return outcome{lp.NoEquilibrium, it, warm}, nil
+		// The dual objective stands for the bound here: a point is nearly dual feasible from the start on.
 		case it >= set.Iterations, set.Ceiling > 0 && dual*s.force*s.lambda > set.Ceiling && it > done:
 			return outcome{lp.IterationLimit, it, warm}, nil
 		case stuck >= 4 || math.IsNaN(primal+dual) || sys.hopeless(it-done, r, primal, dual):

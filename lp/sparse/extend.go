@@ -1,6 +1,6 @@
 package sparse
 
-import "sync"
+import "boughwork/lp/sparse/internal/kernel"
 
 // run is a stretch of rows of a child that stay side by side in its parent: rows from..from+n-1 of the child are rows
 // to..to+n-1 of the parent.
@@ -9,27 +9,10 @@ type run struct{ from, to, n int }
 // extendRows is how many rows of a child are worth a goroutine of their own.
 const extendRows = 64
 
-// inChunks calls f for stretches of 0 to n-1, on so many goroutines.
-func inChunks(n, size, workers int, f func(lo, hi int)) {
-	if workers < 2 || n <= size {
-		f(0, n)
-		return
-	}
-	var wg sync.WaitGroup
-	for g := range workers {
-		wg.Go(func() {
-			for lo := g * size; lo < n; lo += workers * size {
-				f(lo, min(n, lo+size))
-			}
-		})
-	}
-	wg.Wait()
-}
-
 // clearFront sets the panel and the lower triangle of the update matrix of a front to zero.
 func clearFront(t *supernode, a, u []float64, workers int) {
 	rest := t.rows - t.cols
-	inChunks(t.rows, extendRows, workers, func(lo, hi int) {
+	kernel.InChunks(t.rows, extendRows, workers, func(lo, hi int) {
 		clear(a[lo*t.cols : hi*t.cols])
 		for r := max(lo-t.cols, 0); r < hi-t.cols; r++ {
 			clear(u[r*rest : r*rest+r+1])
@@ -59,7 +42,7 @@ func (w *worker) extendAdd(c int32, t *supernode, a, u []float64, workers int) {
 		}
 	}
 	rest := t.rows - t.cols
-	inChunks(n, extendRows, workers, func(lo, hi int) {
+	kernel.InChunks(n, extendRows, workers, func(lo, hi int) {
 		for _, rr := range w.run {
 			for x := max(lo, rr.from); x < min(hi, rr.from+rr.n); x++ {
 				r := rr.to + x - rr.from

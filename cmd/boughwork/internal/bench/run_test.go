@@ -11,7 +11,8 @@ import (
 	"boughwork/lp"
 )
 
-// Volumes that other programs found for the same problems, within the gap and what those left open.
+// Volumes that an earlier trial of the method found for the same problems, and for 10.6 a general linear solver (HiGHS) too,
+// within the gap and what those left open.
 func TestKnownVolumes(t *testing.T) {
 	for _, c := range []struct {
 		name   string

@@ -77,6 +77,16 @@ func parallel(n, workers int, f func(t int, own *buffer)) {
 // largestTile bounds the sides of a tile.
 const largestTile = 16
 
+// InChunks calls f for stretches of 0 to n-1 of the given size, from so many goroutines. What f writes must belong to its
+// stretch.
+func InChunks(n, size, workers int, f func(lo, hi int)) {
+	if workers < 2 || n <= size {
+		f(0, n)
+		return
+	}
+	parallel((n+size-1)/size, workers, func(t int, _ *buffer) { f(t*size, min(n, (t+1)*size)) })
+}
+
 // buffer is the space of one goroutine: a packed block of B, and copies of what stands over the edge of A and of C.
 type buffer struct {
 	a, b []float64
@@ -92,13 +102,8 @@ const packShare = 4
 
 // packAll packs a block of B, on so many goroutines.
 func packAll(to, from []float64, ld, r0, n, p, pn, width, workers int) {
-	step := packShare * width
-	if workers < 2 || n <= step {
-		pack(to, from, ld, r0, n, p, pn, width)
-		return
-	}
-	parallel((n+step-1)/step, workers, func(t int, _ *buffer) {
-		pack(to[t*step*pn:], from, ld, r0+t*step, min(step, n-t*step), p, pn, width)
+	InChunks(n, packShare*width, workers, func(lo, hi int) {
+		pack(to[lo*pn:], from, ld, r0+lo, hi-lo, p, pn, width)
 	})
 }
 

@@ -31,13 +31,7 @@ const solveShare = 128
 // SolveT replaces the m x n matrix X with row stride ld by X L'^-1, by substitution. The result does not depend on
 // workers, the number of goroutines.
 func (t *Triangle) SolveT(x []float64, ld, m, workers int) {
-	if chunks := (m + solveShare - 1) / solveShare; workers > 1 && chunks > 1 {
-		parallel(chunks, workers, func(c int, _ *buffer) {
-			t.rows(x[c*solveShare*ld:], ld, min(solveShare, m-c*solveShare))
-		})
-		return
-	}
-	t.rows(x, ld, m)
+	InChunks(m, solveShare, workers, func(lo, hi int) { t.rows(x[lo*ld:], ld, hi-lo) })
 }
 
 func (t *Triangle) rows(x []float64, ld, m int) {
